@@ -1,0 +1,64 @@
+// Compiled by AssemblyScript only. Tables of the ziggurat method (G. Marsaglia and W. W. Tsang, The ziggurat
+// method for generating random variables, J. Stat. Software 5(8), 2000) for the half normal and the
+// exponential, 256 layers of equal area each, computed when the module starts, with its own Math, so that
+// they have the same bits in every engine.
+//
+// Layer i lies between heights f(x[i]) and f(x[i+1]) and has width x[i]; x[1] = r, where the tail starts;
+// x[0] = area / f(r) is the width of a rectangle with the area of the bottom layer, tail included; x[256] = 0.
+
+const LAYERS: i32 = 256;
+const CELLS: f64 = 9007199254740992.0;
+
+/** Where the tail starts, so that 256 layers close at the mode; recomputed in the tests. */
+export const NORMAL_TAIL: f64 = 3.6541528853610088;
+export const EXPONENTIAL_TAIL: f64 = 7.69711747013104972;
+
+// Per layer 32 bytes: width per 2^-53 cell, the first cell outside the next layer, f(x[i]), f(x[i+1]).
+export const normalLayers: usize = memory.data(256 * 32, 16);
+export const exponentialLayers: usize = memory.data(256 * 32, 16);
+
+function writeLayer(table: usize, i: i32, width: f64, next: f64, low: f64, high: f64): void {
+  const at = table + <usize>(32 * i);
+  store<f64>(at, width / CELLS);
+  store<u64>(at, <u64>((next / width) * CELLS), 8);
+  store<f64>(at, low, 16);
+  store<f64>(at, high, 24);
+}
+
+function buildNormal(): void {
+  const r = NORMAL_TAIL;
+  const low = Math.exp(-0.5 * r * r);
+  // The tail's area is f(r) / (r + 1/(r + 2/(r + 3/(r + …)))), Laplace's continued fraction.
+  let fraction = r;
+  for (let k = 200; k >= 1; k--) fraction = r + <f64>k / fraction;
+  const area = r * low + low / fraction;
+  writeLayer(normalLayers, 0, area / low, r, 0.0, low);
+  let x = r;
+  let f = low;
+  for (let i = 1; i < LAYERS; i++) {
+    const above = i == LAYERS - 1 ? 1.0 : f + area / x;
+    const next = i == LAYERS - 1 ? 0.0 : Math.sqrt(-2.0 * Math.log(above));
+    writeLayer(normalLayers, i, x, next, f, above);
+    x = next;
+    f = above;
+  }
+}
+
+function buildExponential(): void {
+  const r = EXPONENTIAL_TAIL;
+  const low = Math.exp(-r);
+  const area = (r + 1.0) * low;
+  writeLayer(exponentialLayers, 0, area / low, r, 0.0, low);
+  let x = r;
+  let f = low;
+  for (let i = 1; i < LAYERS; i++) {
+    const above = i == LAYERS - 1 ? 1.0 : f + area / x;
+    const next = i == LAYERS - 1 ? 0.0 : -Math.log(above);
+    writeLayer(exponentialLayers, i, x, next, f, above);
+    x = next;
+    f = above;
+  }
+}
+
+buildNormal();
+buildExponential();

@@ -1,0 +1,88 @@
+// Compiled by AssemblyScript only. Draws of counts and of categories, with parameters per element.
+import { nextExponential } from './_randomScalars';
+import { nextCell } from './_randomWords';
+
+// log k! for k < 10, where Stirling's series is not yet accurate.
+const LOG_FACTORIAL: StaticArray<f64> = [
+  0.0, 0.0, 0.6931471805599453, 1.791759469228055, 3.1780538303479458, 4.787491742782046, 6.579251212010101,
+  8.525161361065415, 10.604602902745251, 12.801827480081469,
+];
+
+/**
+ * log of the Poisson mass at k for a rate ≥ 10, in Loader's saddle-point form (C. Loader, Fast and accurate
+ * computation of binomial probabilities, 2000), since −rate + k log rate − log k! cancels for large rates.
+ */
+function logMass(k: f64, rate: f64): f64 {
+  if (k < 10.0) return k * Math.log(rate) - rate - unchecked(LOG_FACTORIAL[<i32>k]);
+  const d = (rate - k) / k;
+  const w = 1.0 / (k * k);
+  const stirling = (1.0 / 12.0 - w * (1.0 / 360.0 - w * (1.0 / 1260.0 - w * (1.0 / 1680.0)))) / k;
+  return k * (Math.log1p(d) - d) - 0.5 * Math.log(6.283185307179586 * k) - stirling;
+}
+
+/** Counts unit-rate arrivals before `rate`: exact, and accurate for the smallest rates. */
+function countArrivals(state: usize, rate: f64): f64 {
+  let count = 0.0;
+  for (let time = nextExponential(state); time < rate; time += nextExponential(state)) count += 1.0;
+  return count;
+}
+
+/**
+ * Poisson draws, one per rate. From rate 10 on, algorithm PTRS (W. Hörmann, The transformed rejection method
+ * for generating Poisson random variables, Insurance: Mathematics and Economics 12, 1993).
+ */
+export function fillPoisson(state: usize, out: usize, n: i32, rates: usize): void {
+  let rate = -1.0;
+  let a = 0.0;
+  let b = 0.0;
+  let inverseAlpha = 0.0;
+  let squeeze = 0.0;
+  for (let i = 0; i < n; i++) {
+    const here = <f64>load<f32>(rates + 4 * <usize>i);
+    const to = out + 4 * <usize>i;
+    if (here < 10.0) {
+      store<f32>(to, <f32>countArrivals(state, here));
+      continue;
+    }
+    if (here != rate) {
+      rate = here;
+      b = 0.931 + 2.53 * Math.sqrt(rate);
+      a = -0.059 + 0.02483 * b;
+      inverseAlpha = 1.1239 + 1.1328 / (b - 3.4);
+      squeeze = 0.9277 - 3.6224 / (b - 2.0);
+    }
+    while (true) {
+      const u = nextCell(state) - 0.5;
+      const v = nextCell(state);
+      const us = 0.5 - Math.abs(u);
+      const k = Math.floor((2.0 * a / us + b) * u + rate + 0.43);
+      if (!(us >= 0.07 && v <= squeeze)) {
+        if (k < 0.0 || (us < 0.013 && v > us)) continue;
+        if (Math.log((v * inverseAlpha) / (a / (us * us) + b)) > logMass(k, rate)) continue;
+      }
+      store<f32>(to, <f32>k);
+      break;
+    }
+  }
+}
+
+/**
+ * One category per row of `k` logits, by inversion of the cumulated softmax weights with one uniform a row.
+ * A logit of −∞ has weight zero, which no uniform strictly inside (0, 1) can hit. `weights` holds k doubles.
+ */
+export function fillCategorical(state: usize, out: usize, rows: i32, logits: usize, k: i32, weights: usize): void {
+  for (let row = 0; row < rows; row++) {
+    const from = logits + 4 * <usize>row * <usize>k;
+    let most: f32 = load<f32>(from);
+    for (let j = 1; j < k; j++) most = max(most, load<f32>(from + 4 * <usize>j));
+    let total = 0.0;
+    for (let j = 0; j < k; j++) {
+      total += Math.exp(<f64>load<f32>(from + 4 * <usize>j) - <f64>most);
+      store<f64>(weights + 8 * <usize>j, total);
+    }
+    const target = nextCell(state) * total;
+    let j = 0;
+    while (j < k - 1 && load<f64>(weights + 8 * <usize>j) <= target) j++;
+    store<i32>(out + 4 * <usize>row, j);
+  }
+}

@@ -1,0 +1,62 @@
+import { type KernelModule, kernelModule } from '../kernels/loader.js';
+
+/** Draws made between copies out of the module's memory: small enough to stay in a processor's cache. */
+const block = 65536;
+
+/** The compiled functions that write `n` draws at `out` and leave the generator's state behind them. */
+export type FillName =
+  | 'fillUniform'
+  | 'fillNormal'
+  | 'fillExponential'
+  | 'fillLaplace'
+  | 'fillLogistic'
+  | 'fillGumbel'
+  | 'fillIntegers'
+  | 'fillPermutation'
+  | 'fillPoisson'
+  | 'fillCategorical'
+  | 'fillGamma'
+  | 'fillLogGamma';
+
+/** Runs `work` with the state of a stream in the module's memory, then reads the advanced state back. */
+export function withState(words: Int32Array, work: (module: KernelModule, state: number) => void): void {
+  const module = kernelModule();
+  module.begin();
+  const state = module.reserve(32);
+  module.words.set(words, state >> 2);
+  work(module, state);
+  words.set(module.words.subarray(state >> 2, (state >> 2) + 8));
+}
+
+/**
+ * Draws into `out`, block by block, advancing `words`. `parameters`, where given, holds `width` float32 for
+ * each draw and is passed to the compiled function, block by block as well.
+ */
+export function fill(
+  words: Int32Array,
+  name: FillName,
+  out: Float32Array | Int32Array,
+  extra: {
+    values?: readonly number[];
+    parameters?: Float32Array;
+    width?: number;
+    scratchBytes?: number;
+  } = {},
+): void {
+  const { values = [], parameters, width = 1, scratchBytes } = extra;
+  const step = Math.max(1, Math.min(out.length, Math.floor(block / width)));
+  withState(words, (module, state) => {
+    const at = module.reserve(4 * step);
+    const from = parameters ? module.reserve(4 * step * width) : 0;
+    const scratch = scratchBytes ? module.reserve(scratchBytes) : 0;
+    const trailing = [...(parameters ? [from] : []), ...values, ...(scratchBytes ? [scratch] : [])];
+    const run = module.call[name]!;
+    for (let done = 0; done < out.length; done += step) {
+      const n = Math.min(step, out.length - done);
+      if (parameters) module.floats.set(parameters.subarray(width * done, width * (done + n)), from >> 2);
+      run(state, at, n, ...trailing);
+      const source = out instanceof Int32Array ? module.words : module.floats;
+      out.set(source.subarray(at >> 2, (at >> 2) + n), done);
+    }
+  });
+}
