@@ -1,0 +1,3 @@
+import type { ErrorCode } from '../../../src/errors.js';
+
+export const code: ErrorCode = 'shape';
