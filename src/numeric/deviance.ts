@@ -1,0 +1,31 @@
+import { log1pmx } from './log1pmx.js';
+
+/**
+ * x log(x / m) + m − x for x ≥ 0, m ≥ 0: half a Poisson deviance, and m for x = 0. Zero, with a double zero, at
+ * x = m: within a factor of two it is −x (log(1 + u) − u) with u = (m − x) / x, which keeps the relative
+ * accuracy there. Source: Loader (2000), "Fast and accurate computation of binomial probabilities", section 2.
+ */
+export function deviance(x: number, m: number): number {
+  if (x === 0.0) return m;
+  const d = m - x;
+  if (Math.abs(d) <= 0.5 * x) return -x * log1pmx(d / x);
+  if (x === Infinity || m === Infinity) return Infinity;
+  return x * Math.log(x / m) + d;
+}
+
+/** log(x / m). */
+export function deviance_x(x: number, m: number): number {
+  return logRatio(x, m);
+}
+
+/** 1 − x / m. */
+export function deviance_m(x: number, m: number): number {
+  return (m - x) / m;
+}
+
+/** log(x / m) for positive x and m, with relative accuracy where they are close and no overflow of the ratio. */
+export function logRatio(x: number, m: number): number {
+  const d = x - m;
+  if (Math.abs(d) <= 0.5 * m) return Math.log1p(d / m);
+  return Math.log(x / m);
+}

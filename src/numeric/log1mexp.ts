@@ -1,0 +1,18 @@
+import { LN2 } from './constants.js';
+
+/**
+ * log(1 − e^x) for x ≤ 0: the logarithm of the complement of a probability given by its logarithm; −Infinity
+ * at 0 and NaN for x > 0.
+ *
+ * Switches at −log 2, where e^x = 1/2: nearer to 0 the small quantity is 1 − e^x, which expm1 gives exactly;
+ * farther out it is e^x itself, which log1p takes. Source: Mächler (2012), "Accurately computing
+ * log(1 − exp(−|a|))", equation 7. @kernel
+ */
+export function log1mexp(x: number): number {
+  if (x > -LN2) return Math.log(-Math.expm1(x));
+  return Math.log1p(-Math.exp(x));
+}
+export function log1mexp_x(x: number): number {
+  if (x > 0.0) return NaN;
+  return -1.0 / Math.expm1(-x);
+}
