@@ -11,6 +11,10 @@ const results = join(cache, 'vitest.json');
 const { name, version } = JSON.parse(readFileSync(join(root, 'package.json'), 'utf8'));
 const tarball = join(cache, `${name}-${version}.tgz`);
 
+/** Colors only where someone looks. */
+const { FORCE_COLOR: _, ...environment } = process.env;
+const env = process.stdout.isTTY ? process.env : { ...environment, NO_COLOR: '1' };
+
 /** A step that hangs has to fail, not to hang the command; the whole of it is meant to take under ten minutes. */
 const stepTimeout = 15 * 60 * 1000;
 
@@ -21,7 +25,10 @@ function tool(packageName, command = packageName) {
 }
 
 const steps = [
-  { title: 'format and lint', command: [...tool('@biomejs/biome', 'biome'), 'check', '--error-on-warnings'] },
+  {
+    title: 'format and lint',
+    command: [...tool('@biomejs/biome', 'biome'), 'check', '--error-on-warnings', '--max-diagnostics=none'],
+  },
   { title: 'build', command: [process.execPath, 'scripts/build.mjs'], essential: true },
   { title: 'types', command: [...tool('typescript', 'tsc'), '-p', 'tsconfig.json'] },
   { title: 'API docs', command: tool('typedoc') },
@@ -49,6 +56,7 @@ function run([file, ...parameters]) {
     const output = [];
     const child = spawn(file, parameters, {
       cwd: root,
+      env,
       stdio: ['ignore', 'pipe', 'pipe'],
       timeout: stepTimeout,
       killSignal: 'SIGKILL',

@@ -36,7 +36,7 @@ function visitAll(node: ts.Node, visit: (node: ts.Node) => void): void {
 }
 
 /** Every module that a file imports: statically, dynamically, as a type or by exporting from it. */
-function importsOf(path: string, text: string): { specifier: string; line: number }[] {
+export function importsOf(path: string, text: string): { specifier: string; line: number }[] {
   const file = parse(path, text);
   const found: { specifier: string; line: number }[] = [];
   visitAll(file, (node) => {

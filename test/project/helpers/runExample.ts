@@ -23,6 +23,7 @@ export async function runExample(
   const printed: string[][] = sites.map(() => []);
   const stray: string[] = [];
   const log = console.log;
+  await tf.ready();
   const backend = tf.getBackend();
   scope.printFromExample =
     (site) =>
