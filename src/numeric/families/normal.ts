@@ -1,25 +1,111 @@
-// The normal distribution's formulas in double precision.
+// The normal distribution in double precision, with z = (x − mean) / sd.
 // Source: Johnson, Kotz and Balakrishnan, Continuous Univariate Distributions 1 (1994), chapter 13.
-const halfLogTwoPi = 0.91893853320467274178;
+import { log1pmx } from '../log1pmx.js';
+import { normalCdf } from '../normalCdf.js';
+import { normalQuantile, normalQuantile_x } from '../normalQuantile.js';
 
-/**
- * Log density, −½ z² − log sd − ½ log 2π with z = (x − mean) / sd.
- * @kernel
- */
+const halfLogTwoPi = 0.91893853320467274178;
+const inverseRootTwoPi = 0.39894228040143267794;
+
+/** Log density, −½ z² − log sd − ½ log 2π. @kernel */
 export function normalLogDensity(x: number, mean: number, sd: number): number {
   const z = (x - mean) / sd;
   return -0.5 * z * z - Math.log(sd) - halfLogTwoPi;
 }
-
 export function normalLogDensity_x(x: number, mean: number, sd: number): number {
   return -((x - mean) / sd) / sd;
 }
-
 export function normalLogDensity_mean(x: number, mean: number, sd: number): number {
   return (x - mean) / sd / sd;
 }
-
 export function normalLogDensity_sd(x: number, mean: number, sd: number): number {
   const z = (x - mean) / sd;
-  return (z - 1.0) * (z + 1.0) / sd;
+  return ((z - 1.0) * (z + 1.0)) / sd;
+}
+
+/** Draw from a standard one, mean + sd · noise. @kernel */
+export function normalDraw(noise: number, mean: number, sd: number): number {
+  return mean + sd * noise;
+}
+export function normalDraw_mean(_noise: number, _mean: number, _sd: number): number {
+  return 1.0;
+}
+export function normalDraw_sd(noise: number, _mean: number, _sd: number): number {
+  return noise;
+}
+
+/** Variance, sd². @kernel */
+export function normalVariance(sd: number): number {
+  return sd * sd;
+}
+export function normalVariance_sd(sd: number): number {
+  return 2.0 * sd;
+}
+
+/** Entropy, log sd + ½ log 2πe. @kernel */
+export function normalEntropy(sd: number): number {
+  return Math.log(sd) + halfLogTwoPi + 0.5;
+}
+export function normalEntropy_sd(sd: number): number {
+  return 1.0 / sd;
+}
+
+function density(z: number): number {
+  return inverseRootTwoPi * Math.exp(-0.5 * z * z);
+}
+
+/** Distribution function, Φ(z). @kernel */
+export function normalCdfOf(x: number, mean: number, sd: number): number {
+  return normalCdf((x - mean) / sd);
+}
+export function normalCdfOf_x(x: number, mean: number, sd: number): number {
+  return density((x - mean) / sd) / sd;
+}
+export function normalCdfOf_mean(x: number, mean: number, sd: number): number {
+  return -density((x - mean) / sd) / sd;
+}
+export function normalCdfOf_sd(x: number, mean: number, sd: number): number {
+  const z = (x - mean) / sd;
+  return (-z * density(z)) / sd;
+}
+
+/** Quantile, mean + sd · Φ⁻¹(p). @kernel */
+export function normalQuantileOf(p: number, mean: number, sd: number): number {
+  return mean + sd * normalQuantile(p);
+}
+export function normalQuantileOf_p(p: number, _mean: number, sd: number): number {
+  return sd * normalQuantile_x(p);
+}
+export function normalQuantileOf_mean(_p: number, _mean: number, _sd: number): number {
+  return 1.0;
+}
+export function normalQuantileOf_sd(p: number, _mean: number, _sd: number): number {
+  return normalQuantile(p);
+}
+
+/**
+ * Divergence, ½ (r² − 1 − log r²) + ½ ((mean − otherMean) / otherSd)² with r = sd / otherSd; the first term
+ * is written through log1p(e) − e with e = r² − 1, which keeps it accurate where r is near 1.
+ * @kernel
+ */
+export function normalKl(mean: number, sd: number, otherMean: number, otherSd: number): number {
+  const d = (mean - otherMean) / otherSd;
+  const t = (sd - otherSd) / otherSd;
+  const e = t * (2.0 + t);
+  // Far below one, e is −1 to rounding and its logarithm must come from the ratio itself.
+  const spread = e < -0.5 ? e - 2.0 * Math.log(sd / otherSd) : -log1pmx(e);
+  return 0.5 * spread + 0.5 * d * d;
+}
+export function normalKl_mean(mean: number, _sd: number, otherMean: number, otherSd: number): number {
+  return (mean - otherMean) / otherSd / otherSd;
+}
+export function normalKl_sd(_mean: number, sd: number, _otherMean: number, otherSd: number): number {
+  return ((sd - otherSd) / otherSd) * ((sd + otherSd) / otherSd) / sd;
+}
+export function normalKl_otherMean(mean: number, _sd: number, otherMean: number, otherSd: number): number {
+  return -((mean - otherMean) / otherSd) / otherSd;
+}
+export function normalKl_otherSd(mean: number, sd: number, otherMean: number, otherSd: number): number {
+  const d = (mean - otherMean) / otherSd;
+  return -(((sd - otherSd) / otherSd) * ((sd + otherSd) / otherSd) + d * d) / otherSd;
 }

@@ -1,0 +1,67 @@
+import type * as tf from '@tensorflow/tfjs';
+import type { Stream } from '../random/stream.js';
+import type { Support } from '../support/support.js';
+
+/** How a draw depends on the parameters: it carries their gradient, or it does not. */
+export type Route = 'pathwise' | 'none';
+
+/**
+ * An array of independent members of a family: an immutable value that can be drawn from and scored. It owns
+ * no variables and keeps no state.
+ */
+export interface Distribution<Family extends string = string, R extends Route = Route> {
+  /** The family's name, by which divergences are found. */
+  readonly family: Family;
+  /** Whether draws carry the parameters' gradient. */
+  readonly route: R;
+  /** The set that points lie in. */
+  readonly support: Support;
+  /** Shape of the array of members: what the parameters broadcast to. */
+  readonly arrayShape: readonly number[];
+  /** Shape of one point; `[]` for scalars. */
+  readonly pointShape: readonly number[];
+  /** A draw of shape `[...arrayShape, ...pointShape]`, with `count` in front where it is given. */
+  draw(stream: Stream, count?: number): tf.Tensor;
+  /** A draw and its log density, in one pass where that is cheaper. */
+  drawScored(stream: Stream, count?: number): { value: tf.Tensor; logDensity: tf.Tensor };
+  /** Log density (log mass for discrete families) in nats; −∞ outside the support. */
+  logDensity(x: tf.Tensor): tf.Tensor;
+  /** The same distribution with its parameters cut from the gradient. */
+  detached(): this;
+}
+
+/** A family whose mean has a closed form. */
+export interface HasMean {
+  /** The mean, of shape `[...arrayShape, ...pointShape]`. */
+  mean(): tf.Tensor;
+}
+/** A family whose variance has a closed form. */
+export interface HasVariance {
+  /** The variance of each coordinate, of shape `[...arrayShape, ...pointShape]`. */
+  variance(): tf.Tensor;
+}
+/** A family whose mode has a closed form. */
+export interface HasMode {
+  /** The most probable point, of shape `[...arrayShape, ...pointShape]`. */
+  mode(): tf.Tensor;
+}
+/** A family whose entropy has a closed form. */
+export interface HasEntropy {
+  /** The entropy in nats, of shape `arrayShape`. */
+  entropy(): tf.Tensor;
+}
+/** A family whose distribution function has a closed form. */
+export interface HasCdf {
+  /** The probability of a point at most `x`; broadcasts like `logDensity`. */
+  cdf(x: tf.Tensor): tf.Tensor;
+}
+/** A family whose quantile function has a closed form. */
+export interface HasQuantile {
+  /** The point below which a member lies with probability `p` in (0, 1); broadcasts like `logDensity`. */
+  quantile(p: tf.Tensor): tf.Tensor;
+}
+
+/** Axes for `count` in front of a shape. */
+export function drawShape(count: number | undefined, shape: readonly number[]): number[] {
+  return count === undefined ? [...shape] : [count, ...shape];
+}

@@ -1,0 +1,92 @@
+import * as tf from '@tensorflow/tfjs';
+import { positive } from '../support/support.js';
+import type { ParameterValue } from '../tensor/checks.js';
+import { choose } from '../tensor/composedMath.js';
+import { kernel } from '../tensor/formula.js';
+import { exponentiated, reciprocal } from '../tensor/transforms.js';
+import type {
+  Distribution,
+  HasCdf,
+  HasEntropy,
+  HasMean,
+  HasMode,
+  HasQuantile,
+  HasVariance,
+} from './distribution.js';
+import { aboveZero, finite } from './parameters.js';
+import { scalarFamily } from './scalarFamily.js';
+
+/** Parameters of {@link exponential}: exactly one. */
+export type ExponentialOptions =
+  | { readonly rate: ParameterValue }
+  | { readonly logRate: ParameterValue }
+  | { readonly scale: ParameterValue }
+  | { readonly mean: ParameterValue };
+
+/** An array of exponential distributions. */
+export interface Exponential
+  extends Distribution<'exponential', 'pathwise'>,
+    HasMean,
+    HasVariance,
+    HasMode,
+    HasEntropy,
+    HasCdf,
+    HasQuantile {
+  /** A parameter as the formulas read it, differentiable. */
+  parameter(name: 'rate'): tf.Tensor;
+}
+
+const fix = 'pass logRate if your network can produce negative values';
+
+const make = scalarFamily({
+  family: 'exponential',
+  route: 'pathwise',
+  support: positive,
+  parameters: {
+    rate: {
+      rate: { domain: aboveZero, fix },
+      logRate: { domain: finite, transform: exponentiated },
+      scale: { domain: aboveZero, transform: reciprocal, fix },
+      mean: { domain: aboveZero, transform: reciprocal, fix },
+    },
+  },
+  logDensity: kernel('exponentialLogDensity', (x, r) =>
+    choose(tf.greaterEqual(x!, 0), tf.sub(tf.log(r!), tf.mul(r!, x!)), Number.NEGATIVE_INFINITY),
+  ),
+  draw: { noise: 'exponential', formula: kernel('exponentialDraw', (e, r) => tf.div(e!, r!)) },
+  summaries: {
+    mean: { ...kernel('reciprocal', (r) => tf.div(1, r!)), parameters: ['rate'] },
+    variance: kernel('exponentialVariance', (r) => tf.div(1, tf.square(r!))),
+    mode: { ...kernel('exponentialMode', (r) => tf.zerosLike(r!)), parameters: ['rate'] },
+    entropy: kernel('exponentialEntropy', (r) => tf.sub(1, tf.log(r!))),
+  },
+  functions: {
+    cdf: kernel('exponentialCdf', (x, r) => tf.neg(tf.expm1(tf.neg(tf.mul(r!, tf.relu(x!)))))),
+    quantile: kernel('exponentialQuantile', (p, r) => tf.neg(tf.div(tf.log1p(tf.neg(p!)), r!))),
+  },
+});
+
+/**
+ * The exponential distribution: waiting times without memory.
+ *
+ * Log density: log rate − rate · x for x ≥ 0, −∞ below, in nats.
+ * Shapes: the parameter's shape is `arrayShape`; points are scalars.
+ * Gradient route: pathwise, draw = noise / rate.
+ *
+ * @param options - one of `rate`, `logRate`, `scale`, `mean`; scale and mean are both 1 / rate
+ * @throws ParameterError when no parameter or more than one is given, or it is not positive and finite.
+ * @example
+ * ```ts
+ * import * as tf from '@tensorflow/tfjs';
+ * import { exponential } from 'leadline';
+ * const d = exponential({ rate: 2 });
+ * console.log(d.logDensity(tf.tensor1d([-1, 0, 1])).arraySync());
+ * // [-Infinity, 0.6931471824645996, -1.306852817535400]
+ * console.log(d.mean().arraySync());
+ * // 0.5
+ * ```
+ * Source: Johnson, Kotz and Balakrishnan, Continuous Univariate Distributions 1 (1994), chapter 19.
+ */
+export function exponential(options: ExponentialOptions): Exponential {
+  return make(options) as unknown as Exponential;
+}

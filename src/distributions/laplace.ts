@@ -1,0 +1,103 @@
+import * as tf from '@tensorflow/tfjs';
+import { real } from '../support/support.js';
+import type { ParameterValue } from '../tensor/checks.js';
+import { kernel } from '../tensor/formula.js';
+import { exponentiated } from '../tensor/transforms.js';
+import type {
+  Distribution,
+  HasCdf,
+  HasEntropy,
+  HasMean,
+  HasMode,
+  HasQuantile,
+  HasVariance,
+} from './distribution.js';
+import { aboveZero, finite } from './parameters.js';
+import { scalarFamily } from './scalarFamily.js';
+
+/** Parameters of {@link laplace}. */
+export type LaplaceOptions = { readonly location: ParameterValue } & (
+  | { readonly scale: ParameterValue }
+  | { readonly logScale: ParameterValue }
+);
+
+/** An array of Laplace distributions. */
+export interface Laplace
+  extends Distribution<'laplace', 'pathwise'>,
+    HasMean,
+    HasVariance,
+    HasMode,
+    HasEntropy,
+    HasCdf,
+    HasQuantile {
+  /** A parameter as the formulas read it, differentiable. */
+  parameter(name: 'location' | 'scale'): tf.Tensor;
+}
+
+const location = { ...kernel('identity', (v) => v.clone()), parameters: ['location'] };
+
+const make = scalarFamily({
+  family: 'laplace',
+  route: 'pathwise',
+  support: real,
+  parameters: {
+    location: { location: { domain: finite } },
+    scale: {
+      scale: { domain: aboveZero, fix: 'pass logScale if your network can produce negative values' },
+      logScale: { domain: finite, transform: exponentiated },
+    },
+  },
+  logDensity: kernel('laplaceLogDensity', (x, l, s) =>
+    tf.neg(tf.add(tf.div(tf.abs(tf.sub(x!, l!)), s!), tf.log(tf.mul(2, s!)))),
+  ),
+  // The same map of standard noise to a draw as the normal's: location + scale · noise.
+  draw: {
+    noise: 'laplace',
+    formula: {
+      ...kernel('normalDraw', (e, l, s) => tf.add(l!, tf.mul(s!, e!))),
+      parameters: ['noise', 'location', 'scale'],
+    },
+  },
+  summaries: {
+    mean: location,
+    mode: location,
+    variance: kernel('laplaceVariance', (s) => tf.mul(2, tf.square(s!))),
+    entropy: kernel('laplaceEntropy', (s) => tf.add(1, tf.log(tf.mul(2, s!)))),
+  },
+  functions: {
+    cdf: kernel('laplaceCdf', (x, l, s) => {
+      const z = tf.div(tf.sub(x!, l!), s!);
+      const tail = tf.mul(0.5, tf.exp(tf.neg(tf.abs(z))));
+      return tf.where(tf.less(z, 0), tail, tf.sub(1, tail));
+    }),
+    quantile: kernel('laplaceQuantile', (p, l, s) => {
+      const low = tf.log(tf.mul(2, tf.minimum(p!, 0.5)));
+      const high = tf.neg(tf.log(tf.mul(2, tf.minimum(tf.sub(1, p!), 0.5))));
+      return tf.add(l!, tf.mul(s!, tf.add(low, high)));
+    }),
+  },
+});
+
+/**
+ * The Laplace distribution: noise with heavier tails than the normal, and a prior that favors values near
+ * its location.
+ *
+ * Log density: −|x − location| / scale − log(2 scale), in nats. Its derivative in x at the location is
+ * taken as zero. Shapes: the parameters broadcast from the right to `arrayShape`; points are scalars.
+ * Gradient route: pathwise, draw = location + scale · noise.
+ *
+ * @param options - `location`, and one of `scale`, `logScale`
+ * @throws ParameterError when a parameter is missing, given twice, not finite, or the scale is not positive.
+ * @example
+ * ```ts
+ * import * as tf from '@tensorflow/tfjs';
+ * import { laplace } from 'leadline';
+ * const d = laplace({ location: 0, scale: 1 });
+ * console.log(d.cdf(tf.tensor1d([-1, 0])).arraySync());
+ * // [0.18393971025943756, 0.5]
+ * ```
+ * Source: Johnson, Kotz and Balakrishnan, Continuous Univariate Distributions 2 (1995), chapter 24.
+ */
+export function laplace(options: LaplaceOptions): Laplace {
+  return make(options) as unknown as Laplace;
+}

@@ -1,0 +1,100 @@
+import * as tf from '@tensorflow/tfjs';
+import { real } from '../support/support.js';
+import type { ParameterValue } from '../tensor/checks.js';
+import { composedNormalCdf } from '../tensor/composedMath.js';
+import { kernel } from '../tensor/formula.js';
+import { expHalf, exponentiated, inverseSquareRoot, squareRoot } from '../tensor/transforms.js';
+import { noComposedForm } from './composedForm.js';
+import type {
+  Distribution,
+  HasCdf,
+  HasEntropy,
+  HasMean,
+  HasMode,
+  HasQuantile,
+  HasVariance,
+} from './distribution.js';
+import { aboveZero, finite } from './parameters.js';
+import { scalarFamily } from './scalarFamily.js';
+
+/** Parameters of {@link normal}: a mean and exactly one measure of spread. */
+export type NormalOptions = { readonly mean: ParameterValue } & (
+  | { readonly sd: ParameterValue }
+  | { readonly logSd: ParameterValue }
+  | { readonly variance: ParameterValue }
+  | { readonly logVariance: ParameterValue }
+  | { readonly precision: ParameterValue }
+);
+
+/** An array of normal distributions. */
+export interface Normal
+  extends Distribution<'normal', 'pathwise'>,
+    HasMean,
+    HasVariance,
+    HasMode,
+    HasEntropy,
+    HasCdf,
+    HasQuantile {
+  /** A parameter as the formulas read it, differentiable. */
+  parameter(name: 'mean' | 'sd'): tf.Tensor;
+}
+
+const halfLogTwoPi = 0.5 * Math.log(2 * Math.PI);
+const fix = 'pass logVariance if your network can produce negative values';
+const mean = kernel('identity', (v) => v.clone());
+
+const make = scalarFamily({
+  family: 'normal',
+  route: 'pathwise',
+  support: real,
+  parameters: {
+    mean: { mean: { domain: finite } },
+    sd: {
+      sd: { domain: aboveZero, fix },
+      logSd: { domain: finite, transform: exponentiated },
+      variance: { domain: aboveZero, transform: squareRoot, fix },
+      logVariance: { domain: finite, transform: expHalf },
+      precision: { domain: aboveZero, transform: inverseSquareRoot, fix },
+    },
+  },
+  logDensity: kernel('normalLogDensity', (x, m, s) => {
+    const z = tf.div(tf.sub(x!, m!), s!);
+    return tf.sub(tf.mul(-0.5, tf.square(z)), tf.add(tf.log(s!), halfLogTwoPi));
+  }),
+  draw: { noise: 'normal', formula: kernel('normalDraw', (e, m, s) => tf.add(m!, tf.mul(s!, e!))) },
+  summaries: {
+    mean: { ...mean, parameters: ['mean'] },
+    mode: { ...mean, parameters: ['mean'] },
+    variance: kernel('normalVariance', (s) => tf.square(s!)),
+    entropy: kernel('normalEntropy', (s) => tf.add(tf.log(s!), halfLogTwoPi + 0.5)),
+  },
+  functions: {
+    cdf: kernel('normalCdfOf', (x, m, s) => composedNormalCdf(tf.div(tf.sub(x!, m!), s!))),
+    quantile: kernel('normalQuantileOf', noComposedForm('normal.quantile')),
+  },
+});
+
+/**
+ * The normal distribution: the usual choice for real-valued latents and for noise with many small causes.
+ *
+ * Log density: −½ ((x − mean) / sd)² − log sd − ½ log 2π, in nats.
+ * Shapes: the parameters broadcast from the right to `arrayShape`; points are scalars.
+ * Gradient route: pathwise, draw = mean + sd · noise.
+ *
+ * @param options - `mean`, and one of `sd`, `logSd`, `variance`, `logVariance`, `precision`
+ * @throws ParameterError when a parameter is missing, given twice, not finite, or a spread is not positive.
+ * @example
+ * ```ts
+ * import * as tf from '@tensorflow/tfjs';
+ * import { normal } from 'leadline';
+ * const d = normal({ mean: [0, 1], sd: 2 });
+ * console.log(d.arrayShape, d.route);
+ * // [ 2 ] pathwise
+ * console.log(d.logDensity(tf.scalar(1)).arraySync());
+ * // [-1.737085700035095, -1.612085700035095]
+ * ```
+ * Source: Johnson, Kotz and Balakrishnan, Continuous Univariate Distributions 1 (1994), chapter 13.
+ */
+export function normal(options: NormalOptions): Normal {
+  return make(options) as unknown as Normal;
+}

@@ -1,0 +1,81 @@
+import * as tf from '@tensorflow/tfjs';
+import { ParameterError } from '../errors.js';
+import { valuesAreChecked } from '../tensor/backend.js';
+import { type ParameterValue, positionText, requireKnownKeys, shapeText } from '../tensor/checks.js';
+import type { Transform } from '../tensor/formula.js';
+import { type Operand, operandData, operandFrom } from '../tensor/operand.js';
+
+/** An open interval that a parameter's numbers must lie in. */
+export interface Domain {
+  readonly words: string;
+  readonly above: number;
+  readonly below: number;
+}
+
+/** Any finite number. */
+export const finite: Domain = { words: 'finite', above: Number.NEGATIVE_INFINITY, below: Number.POSITIVE_INFINITY };
+/** A finite number above zero. */
+export const aboveZero: Domain = { words: 'positive', above: 0, below: Number.POSITIVE_INFINITY };
+/** A finite number from zero. */
+export const fromZero: Domain = { words: 'zero or more', above: -Number.MIN_VALUE, below: Number.POSITIVE_INFINITY };
+/** Strictly between zero and one. */
+export const insideUnit: Domain = { words: 'strictly between 0 and 1', above: 0, below: 1 };
+
+/** One way to give a parameter: its domain, the transform to the form that formulas read, and the usual cure. */
+export interface Form {
+  readonly domain: Domain;
+  readonly transform?: Transform;
+  readonly fix?: string;
+}
+
+/** The ways to give each parameter of a family, by option name; the first is the one that formulas read. */
+export type ParameterForms = Readonly<Record<string, Readonly<Record<string, Form>>>>;
+
+/** Reads a family's options: exactly one form of each parameter, checked, in the family's order. */
+export function readParameters(family: string, forms: ParameterForms, options: object): Record<string, Operand> {
+  requireKnownKeys(family, options, Object.values(forms).flatMap(Object.keys));
+  const given = options as Record<string, ParameterValue | undefined>;
+  const result: Record<string, Operand> = {};
+  for (const [parameter, ways] of Object.entries(forms)) {
+    const used = Object.keys(ways).filter((name) => given[name] !== undefined);
+    if (used.length !== 1) {
+      const names = Object.keys(ways);
+      const what = names.length === 1 ? `${names[0]} must be given` : `exactly one of ${names.join(', ')} must be given`;
+      throw new ParameterError(
+        `${family}: ${what}; got ${used.length === 0 ? 'none' : used.join(' and ')}; pass ${family}({ ${example(forms)} })`,
+      );
+    }
+    const name = used[0]!;
+    const form = ways[name]!;
+    const operand = operandFrom(family, name, given[name]!, form.transform);
+    checkDomain(family, name, form, operand);
+    result[parameter] = operand;
+  }
+  return result;
+}
+
+function example(forms: ParameterForms): string {
+  return Object.values(forms)
+    .map((ways) => Object.keys(ways)[0])
+    .join(', ');
+}
+
+/** Throws where a parameter's numbers leave its domain, naming the first and where it stands. */
+export function checkDomain(family: string, name: string, form: Form, operand: Operand): void {
+  if (operand.source instanceof tf.Tensor && !valuesAreChecked()) return;
+  const data = operandData(operand);
+  const at = firstOutside(data, form.domain);
+  if (at < 0) return;
+  const where = operand.shape.length === 0 ? '' : ` at ${positionText(at, operand.shape)} (shape ${shapeText(operand.shape)})`;
+  throw new ParameterError(
+    `${family}: ${name} must be ${form.domain.words}; got ${data[at]}${where}; ${form.fix ?? 'mend the value, or look for a division or logarithm that made it'}`,
+  );
+}
+
+function firstOutside(data: Float32Array, { above, below }: Domain): number {
+  for (let i = 0; i < data.length; i++) {
+    const v = data[i]!;
+    if (!(v > above && v < below)) return i;
+  }
+  return -1;
+}

@@ -1,0 +1,74 @@
+import * as tf from '@tensorflow/tfjs';
+import { poissonDraws } from '../random/noise.js';
+import { count } from '../support/support.js';
+import type { ParameterValue } from '../tensor/checks.js';
+import { choose, composedLogGamma } from '../tensor/composedMath.js';
+import { kernel } from '../tensor/formula.js';
+import { exponentiated } from '../tensor/transforms.js';
+import type { Distribution, HasMean, HasMode, HasVariance } from './distribution.js';
+import { aboveZero, finite } from './parameters.js';
+import { scalarFamily } from './scalarFamily.js';
+
+/** Parameters of {@link poisson}: exactly one. */
+export type PoissonOptions =
+  | { readonly rate: ParameterValue }
+  | { readonly logRate: ParameterValue }
+  | { readonly mean: ParameterValue };
+
+/** An array of Poisson distributions. */
+export interface Poisson extends Distribution<'poisson', 'none'>, HasMean, HasVariance, HasMode {
+  /** A parameter as the formulas read it, differentiable. */
+  parameter(name: 'rate'): tf.Tensor;
+}
+
+const rate = { ...kernel('identity', (v) => v.clone()), parameters: ['rate'] };
+const fix = 'pass logRate if your network can produce negative values';
+
+const make = scalarFamily({
+  family: 'poisson',
+  route: 'none',
+  support: count,
+  parameters: {
+    rate: {
+      rate: { domain: aboveZero, fix },
+      logRate: { domain: finite, transform: exponentiated },
+      mean: { domain: aboveZero, fix },
+    },
+  },
+  logDensity: kernel('poissonLogDensity', (x, r) => {
+    const whole = tf.logicalAnd(tf.greaterEqual(x!, 0), tf.equal(x!, tf.floor(x!)));
+    const safe = tf.where(whole, x!, tf.zerosLike(x!));
+    const inside = tf.sub(tf.sub(tf.mul(safe, tf.log(r!)), r!), composedLogGamma(tf.add(safe, 1)));
+    return choose(whole, inside, Number.NEGATIVE_INFINITY);
+  }),
+  draw: { sampler: (stream, values) => poissonDraws(stream, values.rate!) },
+  summaries: {
+    mean: rate,
+    variance: rate,
+    mode: kernel('poissonMode', (r) => tf.floor(r!)),
+  },
+});
+
+/**
+ * The Poisson distribution: counts of independent events.
+ *
+ * Log mass: x log rate − rate − log x! at whole numbers from zero, −∞ elsewhere, in nats, computed by
+ * Loader's saddle-point form so that large counts lose nothing. Shapes: the parameter's shape is
+ * `arrayShape`; points are scalars, float32. Gradient route: none.
+ *
+ * @param options - one of `rate`, `logRate`, `mean`; rate and mean are the same
+ * @throws ParameterError when no parameter or more than one is given, or a rate is not positive and finite.
+ * @example
+ * ```ts
+ * import * as tf from '@tensorflow/tfjs';
+ * import { poisson } from 'leadline';
+ * const d = poisson({ rate: 3 });
+ * console.log(d.logDensity(tf.tensor1d([0, 2.5])).arraySync());
+ * // [-3, -Infinity]
+ * ```
+ * Source: Johnson, Kemp and Kotz, Univariate Discrete Distributions, 3rd edition (2005), chapter 4; Loader,
+ * Fast and Accurate Computation of Binomial Probabilities (2000).
+ */
+export function poisson(options: PoissonOptions): Poisson {
+  return make(options) as unknown as Poisson;
+}

@@ -1,0 +1,74 @@
+import { ShapeError } from '../errors.js';
+
+/** The shape that `shapes` broadcast to, from the right; `where` names the caller in the error. */
+export function broadcastShapes(where: string, shapes: readonly (readonly number[])[]): number[] {
+  const rank = Math.max(0, ...shapes.map((s) => s.length));
+  const result: number[] = new Array(rank).fill(1);
+  for (const shape of shapes) {
+    for (let i = 0; i < shape.length; i++) {
+      const at = rank - shape.length + i;
+      const size = shape[i]!;
+      if (size === 1 || size === result[at]) continue;
+      if (result[at] !== 1) {
+        throw new ShapeError(
+          `${where}: shapes must broadcast from the right; got ${shapes.map((s) => `[${s.join(', ')}]`).join(' and ')}; make the sizes of each axis equal, or 1`,
+        );
+      }
+      result[at] = size;
+    }
+  }
+  return result;
+}
+
+/** Number of elements of a shape. */
+export function sizeOf(shape: readonly number[]): number {
+  return shape.reduce((product, size) => product * size, 1);
+}
+
+/** Strides of a contiguous array of `shape` over the axes of `target`; 0 where it is broadcast. */
+export function broadcastStrides(shape: readonly number[], target: readonly number[]): number[] {
+  const strides: number[] = new Array(target.length).fill(0);
+  let stride = 1;
+  for (let i = shape.length - 1; i >= 0; i--) {
+    if (shape[i] !== 1) strides[target.length - shape.length + i] = stride;
+    stride *= shape[i]!;
+  }
+  return strides;
+}
+
+/** Loop sizes, and for each array that takes part its strides over those loops. */
+export interface Loops {
+  readonly sizes: number[];
+  readonly strides: number[][];
+}
+
+/**
+ * Merges neighbouring axes that every array walks through as one and drops axes of size 1, so that most
+ * calls end up with one or two loops. At least two remain.
+ */
+export function mergeAxes(shape: readonly number[], strides: readonly (readonly number[])[]): Loops {
+  const sizes: number[] = [];
+  const merged: number[][] = strides.map(() => []);
+  for (let axis = 0; axis < shape.length; axis++) {
+    const size = shape[axis]!;
+    if (size === 1) continue;
+    const last = sizes.length - 1;
+    const joins = last >= 0 && strides.every((s, k) => merged[k]![last] === s[axis]! * size);
+    if (joins) {
+      sizes[last]! *= size;
+      strides.forEach((s, k) => {
+        merged[k]![last] = s[axis]!;
+      });
+    } else {
+      sizes.push(size);
+      strides.forEach((s, k) => {
+        merged[k]!.push(s[axis]!);
+      });
+    }
+  }
+  while (sizes.length < 2) {
+    sizes.unshift(1);
+    for (const s of merged) s.unshift(0);
+  }
+  return { sizes, strides: merged };
+}

@@ -1,0 +1,123 @@
+// The log-normal distribution in double precision: log x is normal with mean `location` and deviation `scale`.
+// Source: Johnson, Kotz and Balakrishnan, Continuous Univariate Distributions 1 (1994), chapter 14.
+import { normalCdf } from '../normalCdf.js';
+import { normalQuantile, normalQuantile_x } from '../normalQuantile.js';
+
+const halfLogTwoPi = 0.91893853320467274178;
+const inverseRootTwoPi = 0.39894228040143267794;
+
+/** Log density, −½ z² − log x − log scale − ½ log 2π with z = (log x − location) / scale; −∞ for x ≤ 0. @kernel */
+export function logNormalLogDensity(x: number, location: number, scale: number): number {
+  if (!(x > 0.0) || x === Infinity) return -Infinity;
+  const logX = Math.log(x);
+  const z = (logX - location) / scale;
+  return -0.5 * z * z - logX - Math.log(scale) - halfLogTwoPi;
+}
+export function logNormalLogDensity_x(x: number, location: number, scale: number): number {
+  if (!(x > 0.0)) return 0.0;
+  return -((Math.log(x) - location) / scale / scale + 1.0) / x;
+}
+export function logNormalLogDensity_location(x: number, location: number, scale: number): number {
+  if (!(x > 0.0)) return 0.0;
+  return (Math.log(x) - location) / scale / scale;
+}
+export function logNormalLogDensity_scale(x: number, location: number, scale: number): number {
+  if (!(x > 0.0)) return 0.0;
+  const z = (Math.log(x) - location) / scale;
+  return ((z - 1.0) * (z + 1.0)) / scale;
+}
+
+/** Draw, exp(location + scale · noise). @kernel */
+export function logNormalDraw(noise: number, location: number, scale: number): number {
+  return Math.exp(location + scale * noise);
+}
+export function logNormalDraw_location(noise: number, location: number, scale: number): number {
+  return Math.exp(location + scale * noise);
+}
+export function logNormalDraw_scale(noise: number, location: number, scale: number): number {
+  return noise * Math.exp(location + scale * noise);
+}
+
+/** Mean, exp(location + ½ scale²). @kernel */
+export function logNormalMean(location: number, scale: number): number {
+  return Math.exp(location + 0.5 * scale * scale);
+}
+export function logNormalMean_location(location: number, scale: number): number {
+  return Math.exp(location + 0.5 * scale * scale);
+}
+export function logNormalMean_scale(location: number, scale: number): number {
+  return scale * Math.exp(location + 0.5 * scale * scale);
+}
+
+/** Variance, (exp(scale²) − 1) exp(2 location + scale²). @kernel */
+export function logNormalVariance(location: number, scale: number): number {
+  const v = scale * scale;
+  return Math.expm1(v) * Math.exp(2.0 * location + v);
+}
+export function logNormalVariance_location(location: number, scale: number): number {
+  return 2.0 * logNormalVariance(location, scale);
+}
+export function logNormalVariance_scale(location: number, scale: number): number {
+  const v = scale * scale;
+  return 2.0 * scale * Math.exp(2.0 * location + v) * (Math.exp(v) + Math.expm1(v));
+}
+
+/** Mode, exp(location − scale²). @kernel */
+export function logNormalMode(location: number, scale: number): number {
+  return Math.exp(location - scale * scale);
+}
+export function logNormalMode_location(location: number, scale: number): number {
+  return Math.exp(location - scale * scale);
+}
+export function logNormalMode_scale(location: number, scale: number): number {
+  return -2.0 * scale * Math.exp(location - scale * scale);
+}
+
+/** Entropy, location + log scale + ½ log 2πe. @kernel */
+export function logNormalEntropy(location: number, scale: number): number {
+  return location + Math.log(scale) + halfLogTwoPi + 0.5;
+}
+export function logNormalEntropy_location(_location: number, _scale: number): number {
+  return 1.0;
+}
+export function logNormalEntropy_scale(_location: number, scale: number): number {
+  return 1.0 / scale;
+}
+
+function density(z: number): number {
+  return inverseRootTwoPi * Math.exp(-0.5 * z * z);
+}
+
+/** Distribution function, Φ((log x − location) / scale). @kernel */
+export function logNormalCdfOf(x: number, location: number, scale: number): number {
+  if (!(x > 0.0)) return 0.0;
+  return normalCdf((Math.log(x) - location) / scale);
+}
+export function logNormalCdfOf_x(x: number, location: number, scale: number): number {
+  if (!(x > 0.0)) return 0.0;
+  return density((Math.log(x) - location) / scale) / (scale * x);
+}
+export function logNormalCdfOf_location(x: number, location: number, scale: number): number {
+  if (!(x > 0.0)) return 0.0;
+  return -density((Math.log(x) - location) / scale) / scale;
+}
+export function logNormalCdfOf_scale(x: number, location: number, scale: number): number {
+  if (!(x > 0.0)) return 0.0;
+  const z = (Math.log(x) - location) / scale;
+  return (-z * density(z)) / scale;
+}
+
+/** Quantile, exp(location + scale · Φ⁻¹(p)). @kernel */
+export function logNormalQuantileOf(p: number, location: number, scale: number): number {
+  return Math.exp(location + scale * normalQuantile(p));
+}
+export function logNormalQuantileOf_p(p: number, location: number, scale: number): number {
+  return Math.exp(location + scale * normalQuantile(p)) * scale * normalQuantile_x(p);
+}
+export function logNormalQuantileOf_location(p: number, location: number, scale: number): number {
+  return Math.exp(location + scale * normalQuantile(p));
+}
+export function logNormalQuantileOf_scale(p: number, location: number, scale: number): number {
+  const q = normalQuantile(p);
+  return q * Math.exp(location + scale * q);
+}

@@ -1,0 +1,98 @@
+// The uniform distribution between `lower` and `upper` in double precision.
+// Source: Johnson, Kotz and Balakrishnan, Continuous Univariate Distributions 2 (1995), chapter 26.
+
+/** Log density, −log(upper − lower) inside the closed interval, −∞ outside. @kernel */
+export function uniformLogDensity(x: number, lower: number, upper: number): number {
+  return x >= lower && x <= upper ? -Math.log(upper - lower) : -Infinity;
+}
+export function uniformLogDensity_x(_x: number, _lower: number, _upper: number): number {
+  return 0.0;
+}
+export function uniformLogDensity_lower(x: number, lower: number, upper: number): number {
+  return x >= lower && x <= upper ? 1.0 / (upper - lower) : 0.0;
+}
+export function uniformLogDensity_upper(x: number, lower: number, upper: number): number {
+  return x >= lower && x <= upper ? -1.0 / (upper - lower) : 0.0;
+}
+
+/** Quantile, and the draw from a standard uniform: lower + p (upper − lower). @kernel */
+export function uniformQuantile(p: number, lower: number, upper: number): number {
+  return lower + p * (upper - lower);
+}
+export function uniformQuantile_p(_p: number, lower: number, upper: number): number {
+  return upper - lower;
+}
+export function uniformQuantile_lower(p: number, _lower: number, _upper: number): number {
+  return 1.0 - p;
+}
+export function uniformQuantile_upper(p: number, _lower: number, _upper: number): number {
+  return p;
+}
+
+/** Mean, (lower + upper) / 2. @kernel */
+export function uniformMean(lower: number, upper: number): number {
+  return 0.5 * (lower + upper);
+}
+export function uniformMean_lower(_lower: number, _upper: number): number {
+  return 0.5;
+}
+export function uniformMean_upper(_lower: number, _upper: number): number {
+  return 0.5;
+}
+
+/** Variance, (upper − lower)² / 12. @kernel */
+export function uniformVariance(lower: number, upper: number): number {
+  return ((upper - lower) * (upper - lower)) / 12.0;
+}
+export function uniformVariance_lower(lower: number, upper: number): number {
+  return (lower - upper) / 6.0;
+}
+export function uniformVariance_upper(lower: number, upper: number): number {
+  return (upper - lower) / 6.0;
+}
+
+/** Entropy, log(upper − lower). @kernel */
+export function uniformEntropy(lower: number, upper: number): number {
+  return Math.log(upper - lower);
+}
+export function uniformEntropy_lower(lower: number, upper: number): number {
+  return -1.0 / (upper - lower);
+}
+export function uniformEntropy_upper(lower: number, upper: number): number {
+  return 1.0 / (upper - lower);
+}
+
+/** Distribution function, (x − lower) / (upper − lower) held to [0, 1]. @kernel */
+export function uniformCdf(x: number, lower: number, upper: number): number {
+  if (x <= lower) return 0.0;
+  if (x >= upper) return 1.0;
+  return (x - lower) / (upper - lower);
+}
+export function uniformCdf_x(x: number, lower: number, upper: number): number {
+  return x > lower && x < upper ? 1.0 / (upper - lower) : 0.0;
+}
+export function uniformCdf_lower(x: number, lower: number, upper: number): number {
+  return x > lower && x < upper ? (x - upper) / (upper - lower) / (upper - lower) : 0.0;
+}
+export function uniformCdf_upper(x: number, lower: number, upper: number): number {
+  return x > lower && x < upper ? (lower - x) / (upper - lower) / (upper - lower) : 0.0;
+}
+
+/** Divergence, log of the ratio of the widths where the other interval covers this one, else +∞. @kernel */
+export function uniformKl(lower: number, upper: number, otherLower: number, otherUpper: number): number {
+  if (lower < otherLower || upper > otherUpper) return Infinity;
+  // log1p of the excess width keeps the accuracy where the intervals nearly agree.
+  return Math.log1p((lower - otherLower + (otherUpper - upper)) / (upper - lower));
+}
+export function uniformKl_lower(lower: number, upper: number, _otherLower: number, _otherUpper: number): number {
+  return 1.0 / (upper - lower);
+}
+export function uniformKl_upper(lower: number, upper: number, _otherLower: number, _otherUpper: number): number {
+  return -1.0 / (upper - lower);
+}
+export function uniformKl_otherLower(_lower: number, _upper: number, otherLower: number, otherUpper: number): number {
+  return -1.0 / (otherUpper - otherLower);
+}
+export function uniformKl_otherUpper(_lower: number, _upper: number, otherLower: number, otherUpper: number): number {
+  return 1.0 / (otherUpper - otherLower);
+}

@@ -1,0 +1,121 @@
+import * as tf from '@tensorflow/tfjs';
+import { GradientError } from '../errors.js';
+import { type ArrayOperand, evaluateCompiled } from '../kernels/evaluate.js';
+import { broadcastShapes, broadcastStrides, sizeOf } from '../kernels/layout.js';
+import { usesComposedForm } from './composed.js';
+import { evaluateScalar } from './evaluateScalar.js';
+import type { Formula } from './formula.js';
+import { runHostOperation } from './hostOperation.js';
+import { composedTensor, type Operand, operandData } from './operand.js';
+
+/** How a formula is spread over arrays. */
+export interface Spread {
+  /** Broadcast at least to this shape, also where no operand has it. */
+  readonly shape?: readonly number[];
+  /** Sum over this many trailing axes, in the same pass. */
+  readonly fold?: number;
+}
+
+/**
+ * Applies a scalar formula to broadcast operands, optionally summing trailing axes, as one differentiable
+ * tensor operation: one pass in double precision, one rounding. The gradient of each operand is computed
+ * only when it is asked for, and summed over broadcast axes in double precision too.
+ */
+export function applyFormula(where: string, formula: Formula, operands: readonly Operand[], spread: Spread = {}) {
+  const shapes = operands.map((o) => o.shape);
+  const shape = broadcastShapes(where, spread.shape ? [...shapes, spread.shape] : shapes);
+  const fold = spread.fold ?? 0;
+  return usesComposedForm()
+    ? applyComposed(formula, operands, shape, fold)
+    : applyKernel(where, formula, operands, shape, fold);
+}
+
+function applyComposed(formula: Formula, operands: readonly Operand[], shape: number[], fold: number): tf.Tensor {
+  return tf.tidy(() => {
+    const value = formula.composed(...operands.map(composedTensor));
+    const same = value.shape.length === shape.length && value.shape.every((s, i) => s === shape[i]);
+    const full = same ? value : tf.broadcastTo(value, shape);
+    if (fold === 0) return full;
+    return tf.sum(
+      full,
+      Array.from({ length: fold }, (_, i) => shape.length - fold + i),
+    );
+  });
+}
+
+function applyKernel(
+  where: string,
+  formula: Formula,
+  operands: readonly Operand[],
+  shape: number[],
+  fold: number,
+): tf.Tensor {
+  const outShape = shape.slice(0, shape.length - fold);
+  const outStrides = [...broadcastStrides(outShape, outShape), ...new Array<number>(fold).fill(0)];
+  const tracked = operands.flatMap((o, k) => (!o.constant && o.source instanceof tf.Tensor ? [k] : []));
+  // The numbers of every operand: tracked ones as the operation hands them over, the others from here.
+  const gather = (data: readonly Float32Array[]): Float32Array[] =>
+    operands.map((o, k) => (tracked.includes(k) ? data[tracked.indexOf(k)]! : operandData(o)));
+
+  return runHostOperation({
+    where,
+    inputs: tracked.map((k) => operands[k]!.source as tf.Tensor),
+    outShape,
+    forward: (data) => {
+      const pass: Pass = { operands: gather(data), shape, outStrides, outSize: sizeOf(outShape) };
+      return evaluate(formula, operands, pass, -1);
+    },
+    gradient: (at, data, upstream) => {
+      const k = tracked[at]!;
+      requirePartial(where, formula, k);
+      const pass: Pass = {
+        operands: gather(data),
+        shape,
+        outStrides: broadcastStrides(operands[k]!.shape, shape),
+        outSize: sizeOf(operands[k]!.shape),
+        upstream: { data: upstream, strides: outStrides },
+      };
+      return evaluate(formula, operands, pass, k);
+    },
+  });
+}
+
+interface Pass {
+  readonly operands: readonly Float32Array[];
+  readonly shape: readonly number[];
+  readonly outStrides: readonly number[];
+  readonly outSize: number;
+  readonly upstream?: { readonly data: Float32Array; readonly strides: readonly number[] };
+}
+
+/** One pass over the data: the value (`partial` −1), or the gradient of operand `partial`. */
+function evaluate(formula: Formula, operands: readonly Operand[], pass: Pass, partial: number): Float32Array {
+  const compiled = formula.compiled;
+  if (!compiled || operands.some((o) => o.transform && !o.transform.compiled)) {
+    return evaluateScalar(formula, operands, pass, partial);
+  }
+  const arrays: ArrayOperand[] = operands.map((o, k) => ({
+    data: pass.operands[k]!,
+    shape: o.shape,
+    transform: o.transform?.compiled?.index ?? -1,
+  }));
+  const own = partial < 0 ? undefined : operands[partial]!.transform?.compiled;
+  return evaluateCompiled({
+    formula: partial < 0 ? compiled.index : compiled.partials[partial]!,
+    operands: arrays,
+    shape: pass.shape,
+    outStrides: pass.outStrides,
+    outSize: pass.outSize,
+    ...(pass.upstream ? { upstream: pass.upstream } : {}),
+    ...(own ? { chain: { derivative: own.derivative, operand: partial } } : {}),
+  });
+}
+
+function requirePartial(where: string, formula: Formula, k: number): void {
+  const missing = formula.compiled ? formula.compiled.partials[k] === -1 : formula.partials?.[k] === undefined;
+  if (missing) {
+    throw new GradientError(
+      `${where}: the gradient must be taken where one exists; got a derivative in ${formula.parameters[k]}, which ${formula.name} does not have; cut it with detach(…)`,
+    );
+  }
+}
