@@ -12,5 +12,7 @@ export default defineConfig({
     testTimeout: 120_000,
     hookTimeout: 240_000,
     maxWorkers: 2,
+    // A test left focused would silence all others in its file.
+    allowOnly: false,
   },
 });

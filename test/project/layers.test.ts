@@ -1,13 +1,20 @@
 import { describe, expect, it } from 'vitest';
-import { layerFaults, randomnessFaults } from './helpers/layers.js';
+import { layerFaults } from './helpers/layers.js';
+import { packageFaults } from './helpers/packages.js';
+import { randomnessFaults } from './helpers/randomness.js';
 import { read, sourceFiles } from './helpers/repository.js';
 
 const longest = 500;
+const manifest = JSON.parse(read('package.json'));
 const sources = sourceFiles().map((path) => ({ path, text: read(path) }));
 
 describe('the sources', () => {
   it('import only from the layers before their own', () => {
     expect(sources.flatMap(({ path, text }) => layerFaults(path, text))).toEqual([]);
+  });
+
+  it('import only packages that a user has', () => {
+    expect(sources.flatMap(({ path, text }) => packageFaults(path, text, manifest))).toEqual([]);
   });
 
   it('draw only from streams', () => {
@@ -40,8 +47,7 @@ describe('the check of the layers', () => {
     ],
     ['src/tensor/lift.ts', "type Kl = import('../divergence/kl.js').Kl;", 'tensor imports from divergence'],
     ['src/numeric/gamma.ts', "import { ShapeError } from '../errors.js';", 'numeric imports from errors.ts'],
-    ['src/random/stream.ts', "import { elbo } from 'leadline';", 'imports the package itself'],
-    ['src/random/stream.ts', "import { root } from '../../test/root.js';", 'lies outside the layers'],
+    ['src/random/stream.ts', "import { root } from '../../test/errors.js';", 'lies outside the layers'],
     ['src/misc/thing.ts', '', 'misc has no place in the order'],
   ])('finds the fault in %s: %s', (path, text, fault) => {
     expect(layerFaults(path, text).join('\n')).toContain(fault);
@@ -52,7 +58,32 @@ describe('the check of the layers', () => {
       "import '../errors.js'; import '../numeric/gamma.js'; import './other.js'; import 'seedrandom';";
     expect(layerFaults('src/random/stream.ts', text)).toEqual([]);
   });
+});
 
+describe('the check of packages', () => {
+  const brought = {
+    dependencies: { seeds: '1' },
+    peerDependencies: { '@some/tensors': '1', '@some/backend': '1' },
+    peerDependenciesMeta: { '@some/backend': { optional: true } },
+  };
+
+  it.each([
+    ["import { x } from 'leadline';", 'leadline is not a dependency'],
+    ["import { x } from 'not-there/deep';", 'not-there is not a dependency'],
+    ["import { x } from 'node:fs';", 'node:fs does not exist in a browser'],
+    ["import { x } from '@some/backend';", '@some/backend may not be installed'],
+  ])('finds the fault in %s', (text, fault) => {
+    expect(packageFaults('src/a.ts', text, brought)).toEqual([`src/a.ts:1: ${fault}`]);
+  });
+
+  it('lets a source import what is there, or defer what may not be', () => {
+    const text = `import 'seeds/deep'; import '@some/tensors'; import './b.js';
+      await import('@some/backend'); await import('node:fs');`;
+    expect(packageFaults('src/a.ts', text, brought)).toEqual([]);
+  });
+});
+
+describe('the check of randomness', () => {
   it.each([
     'Math.random()',
     'tf.randomNormal([2])',
