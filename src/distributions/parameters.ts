@@ -21,6 +21,9 @@ export const fromZero: Domain = { words: 'zero or more', above: -Number.MIN_VALU
 /** Strictly between zero and one. */
 export const insideUnit: Domain = { words: 'strictly between 0 and 1', above: 0, below: 1 };
 
+/** From zero to one, both included. */
+export const unitClosed: Domain = { words: 'from 0 to 1', above: -Number.MIN_VALUE, below: 1 + Number.EPSILON };
+
 /** One way to give a parameter: its domain, the transform to the form that formulas read, and the usual cure. */
 export interface Form {
   readonly domain: Domain;

@@ -1,6 +1,6 @@
 import * as tf from '@tensorflow/tfjs';
 import { ParameterError } from '../errors.js';
-import { broadcastShapes, broadcastStrides, sizeOf } from '../kernels/layout.js';
+import { broadcastShapes, broadcastStrides, forEachBroadcast } from '../kernels/layout.js';
 import { interval } from '../support/support.js';
 import { valuesAreChecked } from '../tensor/backend.js';
 import { type ParameterValue, positionText } from '../tensor/checks.js';
@@ -61,27 +61,15 @@ function requireOrder({ lower, upper }: Record<string, Operand>): void {
   if (accelerated && !valuesAreChecked()) return;
   const shape = broadcastShapes('uniform', [lower!.shape, upper!.shape]);
   const [a, b] = [operandData(lower!), operandData(upper!)];
-  const [strideA, strideB] = [broadcastStrides(lower!.shape, shape), broadcastStrides(upper!.shape, shape)];
-  for (let i = 0; i < sizeOf(shape); i++) {
-    const low = a[offsetOf(i, shape, strideA)]!;
-    const high = b[offsetOf(i, shape, strideB)]!;
-    if (!(low < high)) {
-      const at = shape.length === 0 ? '' : ` at ${positionText(i, shape)}`;
-      throw new ParameterError(
-        `uniform: upper must be above lower; got lower ${low} and upper ${high}${at}; swap them or widen the interval`,
-      );
-    }
-  }
-}
-
-function offsetOf(index: number, shape: readonly number[], strides: readonly number[]): number {
-  let rest = index;
-  let offset = 0;
-  for (let axis = shape.length - 1; axis >= 0; axis--) {
-    offset += (rest % shape[axis]!) * strides[axis]!;
-    rest = Math.floor(rest / shape[axis]!);
-  }
-  return offset;
+  const strides = [broadcastStrides(lower!.shape, shape), broadcastStrides(upper!.shape, shape)];
+  forEachBroadcast(shape, strides, (i, offsets) => {
+    const [low, high] = [a[offsets[0]!]!, b[offsets[1]!]!];
+    if (low < high) return;
+    const at = shape.length === 0 ? '' : ` at ${positionText(i, shape)}`;
+    throw new ParameterError(
+      `uniform: upper must be above lower; got lower ${low} and upper ${high}${at}; swap them or widen the interval`,
+    );
+  });
 }
 
 /**

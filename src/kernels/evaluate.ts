@@ -1,4 +1,4 @@
-import { broadcastStrides, mergeAxes, sizeOf } from './layout.js';
+import { broadcastStrides, forEachBroadcast, mergeAxes, sizeOf } from './layout.js';
 import { type KernelModule, kernelModule } from './loader.js';
 
 /** One argument of a formula: numbers, their shape, and the compiled transform they pass through first. */
@@ -78,7 +78,7 @@ export function evaluateCompiled(evaluation: Evaluation): Float32Array<ArrayBuff
     words[at + 2] = operandLoops[k]![depth - 1]!;
     words[at + 3] = o.transform;
   });
-  forEachOffset(loops.sizes, depth - 2, loops.strides, (offsets) => {
+  forEachBroadcast(loops.sizes.slice(0, depth - 2), loops.strides, (_index, offsets) => {
     words[d + 5] = sums + outBytes * offsets[0]!;
     words[d + 7] = upstream ? upstreamPointer + 4 * offsets[1]! : 0;
     pointers.forEach((pointer, k) => {
@@ -93,31 +93,4 @@ export function evaluateCompiled(evaluation: Evaluation): Float32Array<ArrayBuff
 
 function copyOut(module: KernelModule, pointer: number, size: number): Float32Array<ArrayBuffer> {
   return module.floats.slice(pointer >> 2, (pointer >> 2) + size) as Float32Array<ArrayBuffer>;
-}
-
-/** Calls `visit` with every array's offset, for each combination of the first `depth` loop counters. */
-export function forEachOffset(
-  sizes: readonly number[],
-  depth: number,
-  strides: readonly (readonly number[])[],
-  visit: (offsets: readonly number[]) => void,
-): void {
-  const counters: number[] = new Array(depth).fill(0);
-  const offsets: number[] = strides.map(() => 0);
-  for (;;) {
-    visit(offsets);
-    let axis = depth - 1;
-    for (; axis >= 0; axis--) {
-      counters[axis]!++;
-      strides.forEach((s, k) => {
-        offsets[k]! += s[axis]!;
-      });
-      if (counters[axis]! < sizes[axis]!) break;
-      strides.forEach((s, k) => {
-        offsets[k]! -= s[axis]! * sizes[axis]!;
-      });
-      counters[axis] = 0;
-    }
-    if (axis < 0) return;
-  }
 }

@@ -72,3 +72,26 @@ export function mergeAxes(shape: readonly number[], strides: readonly (readonly 
   }
   return { sizes, strides: merged };
 }
+
+/** Visits each element of `shape` in order, with the offset of every strided array there. */
+export function forEachBroadcast(
+  shape: readonly number[],
+  strides: readonly (readonly number[])[],
+  visit: (index: number, offsets: readonly number[]) => void,
+): void {
+  const total = sizeOf(shape);
+  const counters: number[] = shape.map(() => 0);
+  const offsets: number[] = strides.map(() => 0);
+  for (let index = 0; index < total; index++) {
+    visit(index, offsets);
+    for (let axis = shape.length - 1; axis >= 0; axis--) {
+      counters[axis]!++;
+      const done = counters[axis] === shape[axis];
+      for (let k = 0; k < strides.length; k++) {
+        offsets[k]! += done ? -strides[k]![axis]! * (shape[axis]! - 1) : strides[k]![axis]!;
+      }
+      if (!done) break;
+      counters[axis] = 0;
+    }
+  }
+}

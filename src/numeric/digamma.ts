@@ -76,6 +76,7 @@ export function digamma(x: number): number {
   if (x >= 1.5) return digammaNear2(x - 2.0);
   if (x >= 0.5) return digammaNear2(x - 1.0) - 1.0 / x;
   if (x >= 0.0) return digammaNear2(x) - 1.0 / (1.0 + x) - 1.0 / x;
+  if (!(x < 0.0)) return NaN;
   const away = x - Math.floor(x + 0.5);
   if (away === 0.0) return NaN;
   return digamma(1.0 - x) - (PI * Math.cos(PI * away)) / Math.sin(PI * away);

@@ -67,8 +67,8 @@ export function logGamma(x: number): number {
   if (x >= 1.5) return logGammaNear2(x - 2.0);
   if (x >= 0.5) return logGammaNear2(x - 1.0) - Math.log1p(x - 1.0);
   if (x >= 0.0) return logGammaNear2(x) - Math.log1p(x) - Math.log(x);
-  const nearest = Math.floor(x + 0.5);
-  const away = Math.abs(x - nearest);
+  if (!(x < 0.0)) return NaN;
+  const away = Math.abs(x - Math.floor(x + 0.5));
   if (away === 0.0) return Infinity;
   return LOG_PI - Math.log(Math.sin(PI * away)) - logGamma(1.0 - x);
 }

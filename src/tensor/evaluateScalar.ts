@@ -1,6 +1,5 @@
 import { GradientError } from '../errors.js';
-import { forEachOffset } from '../kernels/evaluate.js';
-import { broadcastStrides, mergeAxes, sizeOf } from '../kernels/layout.js';
+import { broadcastStrides, forEachBroadcast, mergeAxes, sizeOf } from '../kernels/layout.js';
 import type { Formula } from './formula.js';
 import type { Operand } from './operand.js';
 
@@ -38,7 +37,7 @@ export function evaluateScalar(
   ]);
   const chain = partial < 0 ? undefined : operands[partial]!.transform;
   const values: number[] = new Array(operands.length).fill(0);
-  forEachOffset(loops.sizes, loops.sizes.length, loops.strides, (offsets) => {
+  forEachBroadcast(loops.sizes, loops.strides, (_index, offsets) => {
     const dy = upstream ? upstream.data[offsets[1]!]! : 1;
     if (dy === 0) return;
     let factor = dy;

@@ -48,7 +48,7 @@ export function logSumExp(x: tf.Tensor): tf.Tensor {
 }
 
 /** The log-sum-exp of each row of `n`, in double precision. */
-export function rowLogSums(data: Float32Array, n: number): Float64Array {
+export function rowLogSums(data: Float32Array | Float64Array, n: number): Float64Array {
   const result = new Float64Array(data.length / n);
   for (let row = 0; row < result.length; row++) {
     const start = row * n;

@@ -36,3 +36,6 @@ export const reciprocal = transform('reciprocal', numeric.reciprocal, numeric.re
 export const logOdds = transform('logOdds', numeric.logOdds, numeric.logOdds_v, (v) =>
   tf.sub(tf.log(v), tf.log(tf.sub(1, v))),
 );
+
+/** A probability to its logarithm. */
+export const logarithm = transform('logarithm', numeric.logarithm, numeric.logarithm_v, (v) => tf.log(v));

@@ -2,10 +2,12 @@ import * as tf from '@tensorflow/tfjs';
 import { TrainingError } from '../errors.js';
 import type { Stream } from '../random/stream.js';
 import { shapeText } from '../tensor/checks.js';
-import { blameParts, findFlaw } from './diagnose.js';
+import { findFlaw } from './diagnose.js';
 import { holdState } from './heldState.js';
 import { requireSlotOrder } from './optimizerState.js';
+import { rescueNorm } from './rescueNorm.js';
 import { type BoundParts, listParts, partsOf, type Trainable } from './trainable.js';
+import type { NamedVariable } from './variables.js';
 
 /** What a step is taken on. */
 export interface StepInput<Data> {
@@ -25,12 +27,6 @@ export interface StepReport {
   readonly parts: BoundParts<number>;
   /** The gradient's Euclidean norm over all variables, before clipping. */
   readonly gradientNorm: number;
-}
-
-/** A variable and the name that messages give it. */
-export interface NamedVariable {
-  readonly name: string;
-  readonly variable: tf.Variable;
 }
 
 /** What one backward pass gave; tensors are the holder's to dispose. */
@@ -63,7 +59,12 @@ export class GradientStep<Data> {
     this.#variables = variables;
     this.#explicit = variables !== undefined;
     this.#clip = clip;
-    if (variables) requireSlotOrder(where, optimizer, variables.map(({ variable }) => variable));
+    if (variables)
+      requireSlotOrder(
+        where,
+        optimizer,
+        variables.map(({ variable }) => variable),
+      );
   }
 
   /** One step: gradients, checks, clipping, update. A refused step changes nothing. */
@@ -81,15 +82,30 @@ export class GradientStep<Data> {
         ]),
       );
       // One read-back for all checks, since on an accelerator each costs a round trip.
-      const numbers = await statistics.data();
+      const numbers = (await statistics.data()) as Float32Array;
       statistics.dispose();
       const squares = numbers.subarray(2 + parts.length);
       let norm = Math.sqrt(squares.reduce((sum, square) => sum + square, 0));
-      if (!numbers.every(Number.isFinite)) norm = await this.#rescue(input, pass, gradients, variables);
+      if (!numbers.every(Number.isFinite)) {
+        norm = await rescueNorm({
+          ...input,
+          ...pass,
+          bound: this.#bound,
+          clip: this.#clip,
+          gradients,
+          variables,
+        });
+      }
       await this.#update(input.step, variables, gradients, norm);
       return { bound: numbers[1]!, parts: partsOf(parts, numbers.subarray(2)), gradientNorm: norm };
     } finally {
-      tf.dispose([pass.loss, pass.value, pass.parts.logLikelihood, pass.parts.divergence, pass.grads] as tf.TensorContainer);
+      tf.dispose([
+        pass.loss,
+        pass.value,
+        pass.parts.logLikelihood,
+        pass.parts.divergence,
+        pass.grads,
+      ] as tf.TensorContainer);
     }
   }
 
@@ -108,10 +124,14 @@ export class GradientStep<Data> {
       return tf.div(surrogate.asScalar(), -rows);
     };
     try {
-      const { value, grads } = tf.variableGrads(loss, this.#variables?.map(({ variable }) => variable));
+      const { value, grads } = tf.variableGrads(
+        loss,
+        this.#variables?.map(({ variable }) => variable),
+      );
       return { ...kept!, loss: value, grads };
     } catch (cause) {
-      if (kept) tf.dispose([kept.value, kept.parts.logLikelihood, kept.parts.divergence] as tf.TensorContainer);
+      if (kept)
+        tf.dispose([kept.value, kept.parts.logLikelihood, kept.parts.divergence] as tf.TensorContainer);
       if (cause instanceof Error && /Cannot find a connection|to be trainable/.test(cause.message)) {
         throw new TrainingError(
           `${where}: bound must depend on a trainable variable; got none; use your tf.Variables inside the model's conditionals, and detach() nothing on the way`,
@@ -126,7 +146,11 @@ export class GradientStep<Data> {
     if (!this.#variables) {
       const registered = tf.engine().registeredVariables;
       this.#variables = Object.keys(grads).map((name) => ({ name, variable: registered[name]! }));
-      requireSlotOrder(where, this.#optimizer, this.#variables.map(({ variable }) => variable));
+      requireSlotOrder(
+        where,
+        this.#optimizer,
+        this.#variables.map(({ variable }) => variable),
+      );
     }
     const missed = this.#variables.find(({ variable }) => !grads[variable.name]);
     if (missed) {
@@ -137,63 +161,18 @@ export class GradientStep<Data> {
     return this.#variables;
   }
 
-  /**
-   * Called when some statistic is not finite. Finite gradients whose squares overflow are rescued if they will
-   * be clipped, their true norm returned; everything else is refused, with where it came from.
-   */
-  async #rescue(
-    input: StepInput<Data>,
-    pass: Pass,
-    gradients: readonly tf.Tensor[],
-    variables: readonly NamedVariable[],
-  ): Promise<number> {
-    const found: string[] = [];
-    for (const { label, term } of [
-      ...listParts(pass.parts),
-      { label: 'the bound', term: pass.value },
-    ]) {
-      const flaw = await findFlaw(term);
-      if (flaw) found.push(`${label} = ${flaw.value} at row ${input.rows[flaw.index] ?? flaw.index}`);
-    }
-    if (found.length === 0 && (await findFlaw(pass.loss))) found.push('a surrogate that is not finite');
-    const spoiled: string[] = [];
-    for (const [i, gradient] of gradients.entries()) {
-      const flaw = await findFlaw(gradient);
-      if (flaw) spoiled.push(`gradient of ${variables[i]!.name} with ${flaw.value}`);
-    }
-    if (found.length === 0 && spoiled.length > 0) {
-      const blamed = await blameParts(this.#bound, input.data, input.draws, variables, pass.parts);
-      if (blamed.length > 0) found.push(`a gradient that is not finite from ${blamed.join(', ')}`);
-    }
-    if (found.length > 0 || spoiled.length > 0) {
-      throw new TrainingError(
-        `${where}: step ${input.step} must be finite; got ${[...found, ...spoiled].join(', ')}; no variable was changed: check those rows, lower the learning rate, or clip the gradient`,
-      );
-    }
-    const largest = tf.tidy(() => tf.stack(gradients.map((gradient) => tf.max(tf.abs(gradient)))));
-    const scale = (await largest.data()).reduce((a, b) => Math.max(a, b), 0);
-    largest.dispose();
-    if (this.#clip === Number.POSITIVE_INFINITY) {
-      throw new TrainingError(
-        `${where}: step ${input.step} must have a gradient whose square a float32 can hold; got elements up to ${scale}; no variable was changed: pass clip, or scale the data`,
-      );
-    }
-    const scaled = tf.tidy(() =>
-      tf.sum(tf.stack(gradients.map((gradient) => tf.sum(tf.square(tf.div(gradient, scale)))))),
-    );
-    const norm = scale * Math.sqrt((await scaled.data())[0]!);
-    scaled.dispose();
-    return norm;
-  }
-
   async #update(
     step: number,
     variables: readonly NamedVariable[],
     gradients: readonly tf.Tensor[],
     norm: number,
   ): Promise<void> {
-    const clipped = norm > this.#clip ? gradients.map((gradient) => tf.mul(gradient, this.#clip / norm)) : undefined;
-    const held = holdState(this.#optimizer, variables.map(({ variable }) => variable));
+    const clipped =
+      norm > this.#clip ? gradients.map((gradient) => tf.mul(gradient, this.#clip / norm)) : undefined;
+    const held = holdState(
+      this.#optimizer,
+      variables.map(({ variable }) => variable),
+    );
     try {
       this.#optimizer.applyGradients(
         variables.map(({ variable }, i) => ({ name: variable.name, tensor: (clipped ?? gradients)[i]! })),

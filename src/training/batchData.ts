@@ -63,7 +63,11 @@ function mapTensors(
   return copy;
 }
 
-function toTensor(where: string, name: string, value: tf.Tensor | NumberArray | readonly unknown[]): tf.Tensor {
+function toTensor(
+  where: string,
+  name: string,
+  value: tf.Tensor | NumberArray | readonly unknown[],
+): tf.Tensor {
   if (value instanceof tf.Tensor) {
     requireTensor(where, name, value);
     return tf.clone(value);
@@ -137,7 +141,9 @@ export class RowSource<Data> {
         this.#data[name] = mapTensors(entry, name, hold);
       }
       if (!first) {
-        throw new ParameterError(`${where}: data must have at least one entry; got none; pass for example { x }`);
+        throw new ParameterError(
+          `${where}: data must have at least one entry; got none; pass for example { x }`,
+        );
       }
       this.rows = first.rows;
     } catch (error) {

@@ -1,6 +1,7 @@
 import * as tf from '@tensorflow/tfjs';
 import type { Stream } from '../random/stream.js';
 import { type BoundParts, listParts, type Trainable } from './trainable.js';
+import type { NamedVariable } from './variables.js';
 
 /** The first value that is not finite, and its position. */
 export interface Flaw {
@@ -27,7 +28,7 @@ export async function blameParts<Data>(
   bound: Trainable<Data>,
   data: Data,
   draws: () => Stream,
-  variables: readonly { readonly name: string; readonly variable: tf.Variable }[],
+  variables: readonly NamedVariable[],
   parts: BoundParts<unknown>,
 ): Promise<string[]> {
   const blamed: string[] = [];

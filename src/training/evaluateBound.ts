@@ -54,7 +54,7 @@ export interface EvaluateOptions {
  */
 export async function evaluateBound<Data>(
   bound: Trainable<Data>,
-  data: DataFor<Data>,
+  data: DataFor<NoInfer<Data>>,
   options: EvaluateOptions,
 ): Promise<EvaluatedBound> {
   requireKnownKeys('evaluateBound', options, ['stream', 'batchSize']);
@@ -90,7 +90,10 @@ export async function evaluateBound<Data>(
   return {
     bound: mean,
     standardError: Math.sqrt(spread / (points * (points - 1))),
-    parts: partsOf(names, sums.map((sum) => sum / points)),
+    parts: partsOf(
+      names,
+      sums.map((sum) => sum / points),
+    ),
     points,
   };
 }

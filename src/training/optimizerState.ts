@@ -76,7 +76,11 @@ export function setSlots(optimizer: tf.Optimizer, field: string, slots: readonly
  * tfjs pairs slots with variables by position alone, so that the same variables in another order would step
  * with each other's memory, silently.
  */
-export function requireSlotOrder(where: string, optimizer: tf.Optimizer, variables: readonly tf.Variable[]): void {
+export function requireSlotOrder(
+  where: string,
+  optimizer: tf.Optimizer,
+  variables: readonly tf.Variable[],
+): void {
   for (const slots of readOptimizer(optimizer).lists.values()) {
     for (const [i, slot] of slots.entries()) {
       if (slotOwner(slot) === variables[i]?.name) continue;

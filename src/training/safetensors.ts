@@ -69,9 +69,14 @@ export function decodeSafetensors(where: string, bytes: Uint8Array): StoredTenso
   } catch (cause) {
     refuse(where, 'a damaged header', cause);
   }
-  if (typeof header !== 'object' || header === null || Array.isArray(header)) refuse(where, 'a damaged header');
+  if (typeof header !== 'object' || header === null || Array.isArray(header))
+    refuse(where, 'a damaged header');
   const { __metadata__: metadata = {}, ...entries } = header as Record<string, unknown>;
-  if (typeof metadata !== 'object' || metadata === null || Object.values(metadata).some((v) => typeof v !== 'string')) {
+  if (
+    typeof metadata !== 'object' ||
+    metadata === null ||
+    Object.values(metadata).some((v) => typeof v !== 'string')
+  ) {
     refuse(where, 'damaged metadata');
   }
   const tensors = new Map<string, StoredTensor>();
@@ -80,7 +85,10 @@ export function decodeSafetensors(where: string, bytes: Uint8Array): StoredTenso
     const { dtype, shape, begin, end } = readEntry(where, name, entry);
     const size = shape.reduce((product, side) => product * side, elementBytes[dtype]);
     if (begin !== at || end - begin !== size) {
-      refuse(where, `bytes ${begin} to ${end} for ${name} of type ${dtype} and shape ${shapeText(shape)}: a damaged header`);
+      refuse(
+        where,
+        `bytes ${begin} to ${end} for ${name} of type ${dtype} and shape ${shapeText(shape)}: a damaged header`,
+      );
     }
     at = end;
     tensors.set(name, { dtype, shape, bytes: bytes.subarray(start + begin, start + end) });
@@ -95,7 +103,8 @@ function readEntry(where: string, name: string, entry: unknown) {
   const { dtype, shape, data_offsets: offsets } = (entry ?? {}) as Record<string, unknown>;
   const counts = (list: unknown): list is number[] =>
     Array.isArray(list) && list.every((n) => Number.isSafeInteger(n) && n >= 0);
-  if (!counts(shape) || !counts(offsets) || offsets.length !== 2) refuse(where, `a damaged entry for ${name}`);
+  if (!counts(shape) || !counts(offsets) || offsets.length !== 2)
+    refuse(where, `a damaged entry for ${name}`);
   if (typeof dtype !== 'string' || !Object.hasOwn(elementBytes, dtype)) {
     refuse(where, `the element type ${String(dtype)} for ${name}, where F32, I32 or BOOL is due`);
   }

@@ -7,7 +7,8 @@ function fractionalBits(count: number, power: number): Uint32Array {
   const bits = new Uint32Array(count);
   for (let candidate = 2, found = 0; found < count; candidate++) {
     let prime = true;
-    for (let divisor = 2; divisor * divisor <= candidate; divisor++) if (candidate % divisor === 0) prime = false;
+    for (let divisor = 2; divisor * divisor <= candidate; divisor++)
+      if (candidate % divisor === 0) prime = false;
     if (!prime) continue;
     const root = candidate ** power;
     bits[found++] = Math.floor((root - Math.floor(root)) * 2 ** 32);
@@ -26,7 +27,16 @@ function compress(state: Uint32Array, view: DataView, at: number, schedule: Uint
     const small1 = rotate(y, 17) ^ rotate(y, 19) ^ (y >>> 10);
     schedule[i] = schedule[i - 16]! + small0 + schedule[i - 7]! + small1;
   }
-  let [a, b, c, d, e, f, g, h] = state as unknown as [number, number, number, number, number, number, number, number];
+  let [a, b, c, d, e, f, g, h] = state as unknown as [
+    number,
+    number,
+    number,
+    number,
+    number,
+    number,
+    number,
+    number,
+  ];
   for (let i = 0; i < 64; i++) {
     const big1 = rotate(e, 6) ^ rotate(e, 11) ^ rotate(e, 25);
     const first = (h + big1 + ((e & f) ^ (~e & g)) + roundConstants[i]! + schedule[i]!) | 0;

@@ -1,12 +1,17 @@
+import { TrainingError } from '../errors.js';
+import type { BatchData, Tensors } from './batchData.js';
 import { freshStopping, judge } from './earlyStopping.js';
 import { type EvaluatedBound, evaluateBound } from './evaluateBound.js';
-import { GradientStep, type NamedVariable } from './GradientStep.js';
-import type { BatchData, Tensors } from './batchData.js';
+import { GradientStep } from './GradientStep.js';
 import { type Batch, minibatches } from './minibatches.js';
 import { Pace } from './pace.js';
-import { type Progress, requireTrainOptions, type TrainingCursor, type TrainOptions } from './trainOptions.js';
-import { findVariables } from './variables.js';
-import { TrainingError } from '../errors.js';
+import {
+  type Progress,
+  requireTrainOptions,
+  type TrainingCursor,
+  type TrainOptions,
+} from './trainOptions.js';
+import { findVariables, type NamedVariable } from './variables.js';
 
 /** How long, in milliseconds, training may keep timers, input and drawing of a page waiting. */
 const longestHold = 100;
@@ -95,7 +100,10 @@ export async function* train<Data>(options: TrainOptions<Data>): AsyncGenerator<
         evaluated = { ...result, improved: stopping.bestStep === done };
         if (evaluated.improved) heldOut.best?.take(done);
       }
-      const last = Math.min(options.steps ?? Number.POSITIVE_INFINITY, (options.epochs ?? Number.POSITIVE_INFINITY) * batches);
+      const last = Math.min(
+        options.steps ?? Number.POSITIVE_INFINITY,
+        (options.epochs ?? Number.POSITIVE_INFINITY) * batches,
+      );
       if (stopping.waited >= patience) ended = 'patience';
       else if (done >= last) ended = 'steps';
       if (pace.now() - breathed > longestHold) {
@@ -103,7 +111,11 @@ export async function* train<Data>(options: TrainOptions<Data>): AsyncGenerator<
         breathed = pace.now();
       }
       pace.tick();
-      const cursor: TrainingCursor = { step: done, batches: batch.cursor, ...(heldOut ? { heldOut: stopping } : {}) };
+      const cursor: TrainingCursor = {
+        step: done,
+        batches: batch.cursor,
+        ...(heldOut ? { heldOut: stopping } : {}),
+      };
       yield {
         step: done,
         epoch: batch.epoch,
@@ -125,7 +137,9 @@ function trainedVariables<Data>({ variables }: TrainOptions<Data>): NamedVariabl
   if (variables === undefined) return undefined;
   const found = findVariables('train', variables).filter(({ trainable }) => trainable);
   if (found.length === 0) {
-    throw new TrainingError('train: variables must hold at least one trainable variable; got none; leave out frozen models');
+    throw new TrainingError(
+      'train: variables must hold at least one trainable variable; got none; leave out frozen models',
+    );
   }
   const wrong = found.find(({ variable }) => variable.dtype !== 'float32');
   if (wrong) {

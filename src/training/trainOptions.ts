@@ -3,8 +3,8 @@ import { ParameterError, TrainingError } from '../errors.js';
 import { requireStream, type Stream } from '../random/stream.js';
 import { describe, requireCount, requireKnownKeys, requireNumber } from '../tensor/checks.js';
 import type { DataFor } from './batchData.js';
-import type { EvaluatedBound } from './evaluateBound.js';
 import type { StoppingState } from './earlyStopping.js';
+import type { EvaluatedBound } from './evaluateBound.js';
 import type { BatchCursor } from './minibatches.js';
 import { requireOptimizer } from './optimizerState.js';
 import { Snapshot } from './snapshot.js';
@@ -22,7 +22,7 @@ export type TrainingCursor = {
 
 /** Data kept aside, and what to do with the bound on it. */
 export interface HeldOutOptions<Data> {
-  readonly data: DataFor<Data>;
+  readonly data: DataFor<NoInfer<Data>>;
   /** Steps from one evaluation to the next; one pass over the training data by default. */
   readonly every?: number;
   /** Data points evaluated at a time; 500 by default. */
@@ -41,7 +41,7 @@ export interface HeldOutOptions<Data> {
 /** What `train` needs and may be told. */
 export interface TrainOptions<Data> {
   readonly bound: Trainable<Data>;
-  readonly data: DataFor<Data>;
+  readonly data: DataFor<NoInfer<Data>>;
   readonly optimizer: tf.Optimizer;
   /** Shuffles, draws and evaluations each use forks of it; it is not advanced. */
   readonly stream: Stream;
@@ -106,7 +106,9 @@ export function requireTrainOptions<Data>(options: TrainOptions<Data>): void {
   ]);
   const { bound, optimizer, stream, batchSize, steps, epochs, clip, heldOut, signal, from } = options;
   if (typeof bound?.estimate !== 'function') {
-    throw new TrainingError(`${where}: bound must have an estimate method; got ${describe(bound)}; pass for example elbo(…)`);
+    throw new TrainingError(
+      `${where}: bound must have an estimate method; got ${describe(bound)}; pass for example elbo(…)`,
+    );
   }
   requireOptimizer(where, optimizer);
   requireStream(where, stream);

@@ -27,6 +27,12 @@ export interface FoundVariable {
   readonly trainable: boolean;
 }
 
+/** A variable and the name that messages give it. */
+export interface NamedVariable {
+  readonly name: string;
+  readonly variable: tf.Variable;
+}
+
 /** Every variable of a source with its path, in the order of keys and positions. */
 export function findVariables(where: string, source: VariableSource): FoundVariable[] {
   const found: FoundVariable[] = [];
@@ -67,7 +73,9 @@ export function findVariables(where: string, source: VariableSource): FoundVaria
   };
   walk(source, '');
   if (found.length === 0) {
-    throw new TrainingError(`${where}: variables must hold at least one variable; got none; pass your model's`);
+    throw new TrainingError(
+      `${where}: variables must hold at least one variable; got none; pass your model's`,
+    );
   }
   return found;
 }

@@ -1,0 +1,22 @@
+import type { Distribution } from '../distributions/distribution.js';
+import { registerCategoricalKl } from './categoricalKl.js';
+import { registerMultivariateNormalKl } from './multivariateNormalKl.js';
+import { findKl, type KlFormula } from './registry.js';
+import { registerScalarKl } from './scalarKl.js';
+
+let ready = false;
+
+/** Registers the library's own closed forms, on first use: importing the library runs nothing. */
+export function ensureClosedForms(): void {
+  if (ready) return;
+  ready = true;
+  registerScalarKl();
+  registerCategoricalKl();
+  registerMultivariateNormalKl();
+}
+
+/** The closed form for a pair of distributions, or `undefined`. */
+export function closedKl(q: Distribution, p: Distribution): KlFormula | undefined {
+  ensureClosedForms();
+  return findKl(q, p);
+}
