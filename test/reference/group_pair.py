@@ -1,0 +1,29 @@
+"""Plain functions of two arguments."""
+from mpmath import digamma, exp, expm1, log, log1p, loggamma, mpf
+
+from machinery import HUGE, TINY, Draws, f32, fence, step
+
+
+def near(d):
+    """Two positive arguments, a third of them close to each other."""
+    x = d.positive()
+    if d.random.random() < 0.35:
+        return x, f32(x * (1 + d.sign() * d.log_uniform(1e-7, 1)))
+    return x, d.positive()
+
+
+def tables():
+    tables = {}
+    corners = [(a, b) for a in TINY[:4:3] + [1.0] + HUGE[:1] for b in TINY[:4:3] + [1.0] + HUGE[:1]]
+    switches = [(x, f32(x * r)) for x in (1.0, 3.7, 1e8, 1e-20) for r in fence(0.5, 1, 1.5, 2, steps=(0, 1, 8))]
+    ties = [(step(f32(x), n), x) for x in (f32(7.3), 1000.0, 1e-40, 2.0) for n in (1, -1, 5, -5, 64, -64)]
+
+    def add(name, formula, make, *adversarial, count=220, digits=300):
+        points = Draws(name).many(count, make) + [p for group in adversarial for p in group]
+        tables[name] = (formula, points, digits)
+
+    add('deviance', lambda x, m: x * log(x / m) + m - x, near, corners, switches, ties)
+    add('deviance_x', lambda x, m: log(x / m), near, corners, switches, ties)
+    add('deviance_m', lambda x, m: 1 - x / m, near, corners, switches, ties)
+    add('logRatio', lambda x, m: log(x / m), near, corners, switches, ties)
+    return tables
