@@ -16,14 +16,14 @@ export function sizeOf(caller: string, shape: readonly number[]): number {
     );
   }
   let size = 1;
-  shape.forEach((length: unknown, axis) => {
-    if (!(Number.isInteger(length) && (length as number) >= 0)) {
+  for (const [axis, length] of shape.entries()) {
+    if (!(Number.isInteger(length) && length >= 0)) {
       throw new ShapeError(
         `${caller}: shape must hold whole numbers from 0 up; got ${told(length)} at axis ${axis}; pass lengths such as [100, 8]`,
       );
     }
-    size *= length as number;
-  });
+    size *= length;
+  }
   if (!(size <= most)) {
     throw new ShapeError(
       `${caller}: shape must have at most ${most} elements; got [${shape.join(', ')}]; draw in several calls`,
