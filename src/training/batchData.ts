@@ -22,12 +22,15 @@ export type BatchEntry = tf.Tensor | NumberArray | readonly NumberArray[] | Nest
 /** Entries by name, all with the same number of rows. */
 export type BatchData = { readonly [name: string]: BatchEntry };
 
+/** An object that is not a function: inside a class instance, methods stay what they are. */
+type Plain = object & { readonly call?: never };
+
 /** An entry once batched: what was an array is a tensor. */
 type Batched<Entry> = Entry extends tf.Tensor
   ? Entry
   : Entry extends NumberArray | readonly unknown[]
     ? tf.Tensor
-    : Entry extends object
+    : Entry extends Plain
       ? { [Key in keyof Entry]: Batched<Entry[Key]> }
       : Entry;
 
@@ -41,7 +44,7 @@ type EntryFor<Entry> = [tf.Tensor] extends [Entry]
   ? Entry | NumberArray | readonly NumberArray[] | NestedNumbers
   : Entry extends tf.Tensor
     ? Entry | NumberArray | readonly NumberArray[] | NestedNumbers
-    : Entry extends object
+    : Entry extends Plain
       ? { readonly [Key in keyof Entry]: EntryFor<Entry[Key]> }
       : Entry;
 

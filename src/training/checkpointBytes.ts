@@ -238,8 +238,9 @@ export async function decodeFor<Cursor>(
 }
 
 function toTensor({ dtype, shape, bytes }: StoredTensor): tf.Tensor {
-  // Copied, because values need not start at a multiple of four in the caller's buffer.
-  const { buffer } = bytes.slice();
+  // Copied, because values need not start at a multiple of four in the caller's buffer; and not by slice(),
+  // which for a Buffer of Node copies nothing.
+  const { buffer } = new Uint8Array(bytes);
   if (dtype === 'F32') return tf.tensor(new Float32Array(buffer), [...shape], 'float32');
   if (dtype === 'I32') return tf.tensor(new Int32Array(buffer), [...shape], 'int32');
   return tf.tensor(new Uint8Array(buffer), [...shape], 'bool');
