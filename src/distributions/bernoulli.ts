@@ -30,7 +30,11 @@ const make = scalarFamily({
   parameters: {
     logit: {
       logit: { domain: finite },
-      probability: { domain: insideUnit, transform: logOdds, fix: 'pass logit, which a network can produce freely' },
+      probability: {
+        domain: insideUnit,
+        transform: logOdds,
+        fix: 'pass logit, which a network can produce freely',
+      },
     },
   },
   logDensity: kernel('bernoulliLogDensity', (x, l) =>

@@ -162,7 +162,11 @@ function member(operand: Operand, k: number): Categorical {
     },
     logDensity,
     logProbabilities,
-    mode: () => tf.argMax(tf.tidy(() => composedTensor(operand)), -1),
+    mode: () =>
+      tf.argMax(
+        tf.tidy(() => composedTensor(operand)),
+        -1,
+      ),
     entropy: () =>
       logitOperation(
         'categorical.entropy',
@@ -195,7 +199,9 @@ export function transformed(operand: Operand, raw: Float32Array): Float64Array {
 /** A gradient in the logits carried back through the transform; a zero stays zero whatever the transform. */
 export function chained(operand: Operand, raw: Float32Array, gradient: Float64Array): Float32Array {
   const transform = operand.transform;
-  return Float32Array.from(gradient, (g, i) => (transform && g !== 0 ? g * transform.derivative(raw[i]!) : g));
+  return Float32Array.from(gradient, (g, i) =>
+    transform && g !== 0 ? g * transform.derivative(raw[i]!) : g,
+  );
 }
 
 function rowEntropies(logits: Float64Array, k: number): Float32Array {

@@ -3,8 +3,8 @@ import { positive } from '../support/support.js';
 import type { ParameterValue } from '../tensor/checks.js';
 import { choose, composedNormalCdf } from '../tensor/composedMath.js';
 import { kernel } from '../tensor/formula.js';
+import { noComposedForm } from '../tensor/noComposedForm.js';
 import { exponentiated } from '../tensor/transforms.js';
-import { noComposedForm } from './composedForm.js';
 import type {
   Distribution,
   HasCdf,
@@ -56,7 +56,10 @@ const make = scalarFamily({
     const inside = tf.sub(tf.mul(-0.5, tf.square(z)), tf.add(tf.add(logX, tf.log(s!)), halfLogTwoPi));
     return choose(tf.greater(x!, 0), inside, Number.NEGATIVE_INFINITY);
   }),
-  draw: { noise: 'normal', formula: kernel('logNormalDraw', (e, l, s) => tf.exp(tf.add(l!, tf.mul(s!, e!)))) },
+  draw: {
+    noise: 'normal',
+    formula: kernel('logNormalDraw', (e, l, s) => tf.exp(tf.add(l!, tf.mul(s!, e!)))),
+  },
   summaries: {
     mean: kernel('logNormalMean', (l, s) => tf.exp(tf.add(l!, tf.mul(0.5, tf.square(s!))))),
     variance: kernel('logNormalVariance', (l, s) => {

@@ -92,11 +92,17 @@ function requirePositiveDiagonal(factor: Operand, d: number): void {
 }
 
 function member(mean: Operand, factor: Operand, d: number): MultivariateNormal {
-  const arrayShape = broadcastShapes('multivariateNormal', [mean.shape.slice(0, -1), factor.shape.slice(0, -2)]);
+  const arrayShape = broadcastShapes('multivariateNormal', [
+    mean.shape.slice(0, -1),
+    factor.shape.slice(0, -2),
+  ]);
   const score = (x: tf.Tensor, fold: number): tf.Tensor => {
     requirePoints('multivariateNormal.logDensity', x, [d]);
     return tf.tidy(() =>
-      sumTrailing(usesComposedForm() ? composedLogDensity(x, mean, factor, d) : logDensity(x, mean, factor, d), fold),
+      sumTrailing(
+        usesComposedForm() ? composedLogDensity(x, mean, factor, d) : logDensity(x, mean, factor, d),
+        fold,
+      ),
     );
   };
   const lower = (): tf.Tensor => tf.tidy(() => tf.mul(composedTensor(factor), lowerMask(d)));

@@ -3,8 +3,8 @@ import { real } from '../support/support.js';
 import type { ParameterValue } from '../tensor/checks.js';
 import { composedNormalCdf } from '../tensor/composedMath.js';
 import { kernel } from '../tensor/formula.js';
+import { noComposedForm } from '../tensor/noComposedForm.js';
 import { expHalf, exponentiated, inverseSquareRoot, squareRoot } from '../tensor/transforms.js';
-import { noComposedForm } from './composedForm.js';
 import type {
   Distribution,
   HasCdf,

@@ -13,16 +13,28 @@ export interface Domain {
 }
 
 /** Any finite number. */
-export const finite: Domain = { words: 'finite', above: Number.NEGATIVE_INFINITY, below: Number.POSITIVE_INFINITY };
+export const finite: Domain = {
+  words: 'finite',
+  above: Number.NEGATIVE_INFINITY,
+  below: Number.POSITIVE_INFINITY,
+};
 /** A finite number above zero. */
 export const aboveZero: Domain = { words: 'positive', above: 0, below: Number.POSITIVE_INFINITY };
 /** A finite number from zero. */
-export const fromZero: Domain = { words: 'zero or more', above: -Number.MIN_VALUE, below: Number.POSITIVE_INFINITY };
+export const fromZero: Domain = {
+  words: 'zero or more',
+  above: -Number.MIN_VALUE,
+  below: Number.POSITIVE_INFINITY,
+};
 /** Strictly between zero and one. */
 export const insideUnit: Domain = { words: 'strictly between 0 and 1', above: 0, below: 1 };
 
 /** From zero to one, both included. */
-export const unitClosed: Domain = { words: 'from 0 to 1', above: -Number.MIN_VALUE, below: 1 + Number.EPSILON };
+export const unitClosed: Domain = {
+  words: 'from 0 to 1',
+  above: -Number.MIN_VALUE,
+  below: 1 + Number.EPSILON,
+};
 
 /** One way to give a parameter: its domain, the transform to the form that formulas read, and the usual cure. */
 export interface Form {
@@ -35,7 +47,11 @@ export interface Form {
 export type ParameterForms = Readonly<Record<string, Readonly<Record<string, Form>>>>;
 
 /** Reads a family's options: exactly one form of each parameter, checked, in the family's order. */
-export function readParameters(family: string, forms: ParameterForms, options: object): Record<string, Operand> {
+export function readParameters(
+  family: string,
+  forms: ParameterForms,
+  options: object,
+): Record<string, Operand> {
   requireKnownKeys(family, options, Object.values(forms).flatMap(Object.keys));
   const given = options as Record<string, ParameterValue | undefined>;
   const result: Record<string, Operand> = {};
@@ -43,7 +59,8 @@ export function readParameters(family: string, forms: ParameterForms, options: o
     const used = Object.keys(ways).filter((name) => given[name] !== undefined);
     if (used.length !== 1) {
       const names = Object.keys(ways);
-      const what = names.length === 1 ? `${names[0]} must be given` : `exactly one of ${names.join(', ')} must be given`;
+      const what =
+        names.length === 1 ? `${names[0]} must be given` : `exactly one of ${names.join(', ')} must be given`;
       throw new ParameterError(
         `${family}: ${what}; got ${used.length === 0 ? 'none' : used.join(' and ')}; pass ${family}({ ${example(forms)} })`,
       );
@@ -69,7 +86,10 @@ export function checkDomain(family: string, name: string, form: Form, operand: O
   const data = operandData(operand);
   const at = firstOutside(data, form.domain);
   if (at < 0) return;
-  const where = operand.shape.length === 0 ? '' : ` at ${positionText(at, operand.shape)} (shape ${shapeText(operand.shape)})`;
+  const where =
+    operand.shape.length === 0
+      ? ''
+      : ` at ${positionText(at, operand.shape)} (shape ${shapeText(operand.shape)})`;
   throw new ParameterError(
     `${family}: ${name} must be ${form.domain.words}; got ${data[at]}${where}; ${form.fix ?? 'mend the value, or look for a division or logarithm that made it'}`,
   );

@@ -3,13 +3,7 @@ import { ParameterError, ShapeError } from '../errors.js';
 import type { Stream } from '../random/stream.js';
 import type { Support } from '../support/support.js';
 import { describe, requireCount, shapeText } from '../tensor/checks.js';
-import type {
-  Distribution,
-  HasEntropy,
-  HasMean,
-  HasMode,
-  HasVariance,
-} from './distribution.js';
+import type { Distribution, HasEntropy, HasMean, HasMode, HasVariance } from './distribution.js';
 import { foldLogDensity, requirePoints, sumTrailing } from './fold.js';
 
 /** A joint distribution of independent coordinates, with the closed forms that its coordinates have. */
@@ -20,7 +14,8 @@ export type Product<D extends Distribution> = ProductBase<D> &
   (D extends HasEntropy ? HasEntropy : unknown);
 
 /** What every product has, whatever its coordinates. */
-export interface ProductBase<D extends Distribution> extends Distribution<`product<${D['family']}>`, D['route']> {
+export interface ProductBase<D extends Distribution>
+  extends Distribution<`product<${D['family']}>`, D['route']> {
   /** The distribution whose array axes were folded. */
   readonly base: D;
   /** How many of them. */

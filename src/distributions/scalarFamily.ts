@@ -1,5 +1,5 @@
 import * as tf from '@tensorflow/tfjs';
-import { broadcastShapes } from '../kernels/layout.js';
+import { broadcastShapes, sizeOf } from '../kernels/layout.js';
 import { type NoiseKind, noise } from '../random/noise.js';
 import { requireStream, type Stream } from '../random/stream.js';
 import type { Support } from '../support/support.js';
@@ -8,7 +8,6 @@ import { requireCount, requireTensor } from '../tensor/checks.js';
 import { floatsOf, tensorOf } from '../tensor/engine.js';
 import { type Formula, kernel } from '../tensor/formula.js';
 import { detachedOperand, type Operand } from '../tensor/operand.js';
-import { sizeOf } from '../kernels/layout.js';
 import { type Distribution, drawShape, type Route } from './distribution.js';
 import { type ParameterForms, readParameters } from './parameters.js';
 
@@ -115,7 +114,8 @@ function member<Family extends string, R extends Route>(
 
   const methods: Record<string, unknown> = {};
   for (const [name, formula] of Object.entries(definition.summaries ?? {})) {
-    methods[name] = () => applyFormula(`${family}.${name}`, formula, pick(formula, []), { shape: arrayShape });
+    methods[name] = () =>
+      applyFormula(`${family}.${name}`, formula, pick(formula, []), { shape: arrayShape });
   }
   for (const [name, formula] of Object.entries(definition.functions ?? {})) {
     methods[name] = (x: tf.Tensor) =>

@@ -51,7 +51,10 @@ function requireSamePoints(where: string, q: Distribution, p: Distribution): voi
  * ```
  * Source: Kullback and Leibler, Ann. Math. Stat. 22 (1951) 79–86.
  */
-export function kl<Q extends Distribution, P extends Distribution>(q: Q, p: P & ClosedPartner<Q, P>): tf.Tensor {
+export function kl<Q extends Distribution, P extends Distribution>(
+  q: Q,
+  p: P & ClosedPartner<Q, P>,
+): tf.Tensor {
   requireDistribution('kl', 'q', q);
   const other: Distribution = p;
   requireDistribution('kl', 'p', other);

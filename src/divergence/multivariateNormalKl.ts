@@ -62,7 +62,12 @@ interface Pair {
 
 function factorKl(m1: tf.Tensor, l1: tf.Tensor, m2: tf.Tensor, l2: tf.Tensor, d: number): tf.Tensor {
   if (usesComposedForm()) return composedKl(m1, l1, m2, l2, d);
-  const batches = [m1.shape.slice(0, -1), l1.shape.slice(0, -2), m2.shape.slice(0, -1), l2.shape.slice(0, -2)];
+  const batches = [
+    m1.shape.slice(0, -1),
+    l1.shape.slice(0, -2),
+    m2.shape.slice(0, -1),
+    l2.shape.slice(0, -2),
+  ];
   const shape = broadcastShapes('kl', batches);
   const strides = batches.map((b) => broadcastStrides(b, shape));
 
@@ -185,5 +190,7 @@ function composedKl(m1: tf.Tensor, l1: tf.Tensor, m2: tf.Tensor, l2: tf.Tensor, 
 }
 
 function expandTo(scalar: tf.Tensor, like: tf.Tensor): tf.Tensor {
-  return like.shape.length > scalar.shape.length && scalar.shape.length > 0 ? tf.expandDims(scalar, -1) : scalar;
+  return like.shape.length > scalar.shape.length && scalar.shape.length > 0
+    ? tf.expandDims(scalar, -1)
+    : scalar;
 }

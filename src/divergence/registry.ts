@@ -47,7 +47,10 @@ export function addKl(pair: keyof ClosedKlPairs, formula: KlFormula): void {
 }
 
 /** Adds a closed form of a user's, whose result is folded afterwards; false where the pair is taken. */
-export function addUnfoldedKl(pair: string, formula: (q: Distribution, p: Distribution) => tf.Tensor): boolean {
+export function addUnfoldedKl(
+  pair: string,
+  formula: (q: Distribution, p: Distribution) => tf.Tensor,
+): boolean {
   if (formulas.has(pair)) return false;
   formulas.set(pair, (q, p, fold) => sumTrailing(formula(q, p), fold));
   return true;

@@ -16,7 +16,10 @@ function add(pair: keyof ClosedKlPairs, formula: Formula): void {
   addKl(pair, (q, p, fold) => {
     const [a, b] = [scalar(q), scalar(p)];
     const shape = broadcastShapes('kl', [a.arrayShape, b.arrayShape]);
-    return applyFormula('kl', formula, [...Object.values(a.operands), ...Object.values(b.operands)], { shape, fold });
+    return applyFormula('kl', formula, [...Object.values(a.operands), ...Object.values(b.operands)], {
+      shape,
+      fold,
+    });
   });
 }
 
@@ -67,10 +70,7 @@ export function registerScalarKl(): void {
   add(
     'bernoulli|bernoulli',
     kernel('bernoulliKl', (a, b) =>
-      tf.add(
-        tf.mul(tf.sigmoid(a!), tf.sub(a!, b!)),
-        tf.sub(composedSoftplus(b!), composedSoftplus(a!)),
-      ),
+      tf.add(tf.mul(tf.sigmoid(a!), tf.sub(a!, b!)), tf.sub(composedSoftplus(b!), composedSoftplus(a!))),
     ),
   );
   add(

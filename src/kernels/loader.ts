@@ -59,7 +59,8 @@ export class KernelModule {
 
   /** The whole memory as float32 numbers; index with `pointer >> 2`. */
   get floats(): Float32Array {
-    if (this.#floats.buffer !== this.call.memory.buffer) this.#floats = new Float32Array(this.call.memory.buffer);
+    if (this.#floats.buffer !== this.call.memory.buffer)
+      this.#floats = new Float32Array(this.call.memory.buffer);
     return this.#floats;
   }
 

@@ -21,7 +21,12 @@ export interface Spread {
  * tensor operation: one pass in double precision, one rounding. The gradient of each operand is computed
  * only when it is asked for, and summed over broadcast axes in double precision too.
  */
-export function applyFormula(where: string, formula: Formula, operands: readonly Operand[], spread: Spread = {}) {
+export function applyFormula(
+  where: string,
+  formula: Formula,
+  operands: readonly Operand[],
+  spread: Spread = {},
+) {
   const shapes = operands.map((o) => o.shape);
   const shape = broadcastShapes(where, spread.shape ? [...shapes, spread.shape] : shapes);
   const fold = spread.fold ?? 0;
@@ -30,7 +35,12 @@ export function applyFormula(where: string, formula: Formula, operands: readonly
     : applyKernel(where, formula, operands, shape, fold);
 }
 
-function applyComposed(formula: Formula, operands: readonly Operand[], shape: number[], fold: number): tf.Tensor {
+function applyComposed(
+  formula: Formula,
+  operands: readonly Operand[],
+  shape: number[],
+  fold: number,
+): tf.Tensor {
   return tf.tidy(() => {
     const value = formula.composed(...operands.map(composedTensor));
     const same = value.shape.length === shape.length && value.shape.every((s, i) => s === shape[i]);
@@ -112,7 +122,9 @@ function evaluate(formula: Formula, operands: readonly Operand[], pass: Pass, pa
 }
 
 function requirePartial(where: string, formula: Formula, k: number): void {
-  const missing = formula.compiled ? formula.compiled.partials[k] === -1 : formula.partials?.[k] === undefined;
+  const missing = formula.compiled
+    ? formula.compiled.partials[k] === -1
+    : formula.partials?.[k] === undefined;
   if (missing) {
     throw new GradientError(
       `${where}: the gradient must be taken where one exists; got a derivative in ${formula.parameters[k]}, which ${formula.name} does not have; cut it with detach(…)`,

@@ -11,7 +11,8 @@ export type ParameterValue = tf.Tensor | number | NestedNumbers | Float32Array |
 export function describe(value: unknown): string {
   if (value === null) return 'null';
   if (typeof value === 'string') return `the string '${value}'`;
-  if (typeof value === 'number' || typeof value === 'boolean' || typeof value === 'undefined') return `${value}`;
+  if (typeof value === 'number' || typeof value === 'boolean' || typeof value === 'undefined')
+    return `${value}`;
   if (Array.isArray(value)) return `an array of ${value.length}`;
   if (value instanceof tf.Tensor) return `a tensor of shape ${shapeText(value.shape)}`;
   if (typeof value === 'function') return 'a function';
@@ -43,7 +44,12 @@ export function requireTensor(where: string, name: string, value: unknown): asse
 }
 
 /** Refuses a size that is not a non-negative (or positive) whole number. */
-export function requireCount(where: string, name: string, value: unknown, least = 0): asserts value is number {
+export function requireCount(
+  where: string,
+  name: string,
+  value: unknown,
+  least = 0,
+): asserts value is number {
   if (!(typeof value === 'number' && Number.isSafeInteger(value) && value >= least)) {
     throw new ParameterError(
       `${where}: ${name} must be a whole number of at least ${least}; got ${describe(value)}; pass for example ${Math.max(1, least)}`,
@@ -59,27 +65,39 @@ export function requireNumber(
   least = Number.NEGATIVE_INFINITY,
 ): asserts value is number {
   if (!(typeof value === 'number' && Number.isFinite(value) && value >= least)) {
-    const domain = least === Number.NEGATIVE_INFINITY ? 'a finite number' : `a finite number of at least ${least}`;
+    const domain =
+      least === Number.NEGATIVE_INFINITY ? 'a finite number' : `a finite number of at least ${least}`;
     throw new ParameterError(`${where}: ${name} must be ${domain}; got ${describe(value)}; mend the value`);
   }
 }
 
 /** Refuses keys of an options object that are not among `known`. */
 export function requireKnownKeys(where: string, options: unknown, known: readonly string[]): void {
-  if (typeof options !== 'object' || options === null || options instanceof tf.Tensor || Array.isArray(options)) {
+  if (
+    typeof options !== 'object' ||
+    options === null ||
+    options instanceof tf.Tensor ||
+    Array.isArray(options)
+  ) {
     throw new ParameterError(
       `${where}: options must be an object; got ${describe(options)}; pass { ${known.slice(0, 2).join(', ')} }`,
     );
   }
   for (const key of Object.keys(options)) {
     if (!known.includes(key)) {
-      throw new ParameterError(`${where}: options must be among ${known.join(', ')}; got '${key}'; remove or rename it`);
+      throw new ParameterError(
+        `${where}: options must be among ${known.join(', ')}; got '${key}'; remove or rename it`,
+      );
     }
   }
 }
 
 /** Flattens nested arrays into float32 numbers and their shape. */
-export function flatten(where: string, name: string, value: NestedNumbers): { data: Float32Array; shape: number[] } {
+export function flatten(
+  where: string,
+  name: string,
+  value: NestedNumbers,
+): { data: Float32Array; shape: number[] } {
   const shape: number[] = [];
   let level: unknown = value;
   while (Array.isArray(level)) {
@@ -90,7 +108,9 @@ export function flatten(where: string, name: string, value: NestedNumbers): { da
   const walk = (part: unknown, depth: number): void => {
     if (depth === shape.length) {
       if (typeof part !== 'number') {
-        throw new ParameterError(`${where}: ${name} must hold numbers; got ${describe(part)}; mend the array`);
+        throw new ParameterError(
+          `${where}: ${name} must hold numbers; got ${describe(part)}; mend the array`,
+        );
       }
       data.push(part);
       return;

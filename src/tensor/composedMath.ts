@@ -17,7 +17,10 @@ export function composedLogGamma(x: tf.Tensor): tf.Tensor {
   const inverse = tf.div(1, z);
   const square = tf.square(inverse);
   const series = tf.mul(inverse, tf.add(1 / 12, tf.mul(square, tf.add(-1 / 360, tf.mul(square, 1 / 1260)))));
-  const stirling = tf.add(tf.sub(tf.mul(tf.sub(z, 0.5), tf.log(z)), z), tf.add(series, 0.5 * Math.log(2 * Math.PI)));
+  const stirling = tf.add(
+    tf.sub(tf.mul(tf.sub(z, 0.5), tf.log(z)), z),
+    tf.add(series, 0.5 * Math.log(2 * Math.PI)),
+  );
   return tf.sub(stirling, tf.log(product));
 }
 
@@ -25,13 +28,14 @@ export function composedLogGamma(x: tf.Tensor): tf.Tensor {
 export function composedNormalCdf(x: tf.Tensor): tf.Tensor {
   // Coefficients: Press et al., Numerical Recipes, 2nd edition (1992), section 6.2, erfcc.
   const coefficients = [
-    -1.26551223, 1.00002368, 0.37409196, 0.09678418, -0.18628806, 0.27886807, -1.13520398, 1.48851587, -0.82215223,
-    0.17087277,
+    -1.26551223, 1.00002368, 0.37409196, 0.09678418, -0.18628806, 0.27886807, -1.13520398, 1.48851587,
+    -0.82215223, 0.17087277,
   ];
   const z = tf.div(tf.abs(x), Math.SQRT2);
   const t = tf.div(1, tf.add(1, tf.mul(z, 0.5)));
   let polynomial: tf.Tensor = tf.fill(x.shape, coefficients[coefficients.length - 1]!);
-  for (let k = coefficients.length - 2; k >= 0; k--) polynomial = tf.add(coefficients[k]!, tf.mul(polynomial, t));
+  for (let k = coefficients.length - 2; k >= 0; k--)
+    polynomial = tf.add(coefficients[k]!, tf.mul(polynomial, t));
   const upper = tf.mul(tf.mul(0.5, t), tf.exp(tf.sub(polynomial, tf.square(z))));
   return tf.where(tf.less(x, 0), upper, tf.sub(1, upper));
 }

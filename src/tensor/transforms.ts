@@ -13,13 +13,19 @@ function transform(
 }
 
 /** A log variance to a standard deviation, exp(v / 2). */
-export const expHalf = transform('expHalf', numeric.expHalf, numeric.expHalf_v, (v) => tf.exp(tf.mul(v, 0.5)));
+export const expHalf = transform('expHalf', numeric.expHalf, numeric.expHalf_v, (v) =>
+  tf.exp(tf.mul(v, 0.5)),
+);
 
 /** A logarithm to what it is the logarithm of, exp(v). */
-export const exponentiated = transform('exponential', numeric.exponential, numeric.exponential_v, (v) => tf.exp(v));
+export const exponentiated = transform('exponential', numeric.exponential, numeric.exponential_v, (v) =>
+  tf.exp(v),
+);
 
 /** A variance to a standard deviation, √v. */
-export const squareRoot = transform('squareRoot', numeric.squareRoot, numeric.squareRoot_v, (v) => tf.sqrt(v));
+export const squareRoot = transform('squareRoot', numeric.squareRoot, numeric.squareRoot_v, (v) =>
+  tf.sqrt(v),
+);
 
 /** A precision to a standard deviation, 1 / √v. */
 export const inverseSquareRoot = transform(
@@ -30,7 +36,9 @@ export const inverseSquareRoot = transform(
 );
 
 /** A scale to a rate or a rate to a scale, 1 / v. */
-export const reciprocal = transform('reciprocal', numeric.reciprocal, numeric.reciprocal_v, (v) => tf.div(1, v));
+export const reciprocal = transform('reciprocal', numeric.reciprocal, numeric.reciprocal_v, (v) =>
+  tf.div(1, v),
+);
 
 /** A probability to its log odds, log(v / (1 − v)). */
 export const logOdds = transform('logOdds', numeric.logOdds, numeric.logOdds_v, (v) =>

@@ -94,7 +94,6 @@ export function bernoulliKl_otherLogit(logit: number, otherLogit: number): numbe
   const p = sigmoid(a);
   const delta = b - a;
   const e = Math.expm1(delta);
-  const difference =
-    Math.abs(delta) < 1.0 ? (p * sigmoid(-a) * e) / (1.0 + p * e) : sigmoid(b) - p;
+  const difference = Math.abs(delta) < 1.0 ? (p * sigmoid(-a) * e) / (1.0 + p * e) : sigmoid(b) - p;
   return flip ? -difference : difference;
 }

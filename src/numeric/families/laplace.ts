@@ -79,18 +79,33 @@ export function laplaceQuantile_scale(p: number, _location: number, _scale: numb
  * (r − 1 − log r) + r (exp(−d) − 1 + d). Both parts are sums of positive terms, so nothing cancels.
  * @kernel
  */
-export function laplaceKl(location: number, scale: number, otherLocation: number, otherScale: number): number {
+export function laplaceKl(
+  location: number,
+  scale: number,
+  otherLocation: number,
+  otherScale: number,
+): number {
   const d = Math.abs(location - otherLocation) / scale;
   const r = scale / otherScale;
   const t = (scale - otherScale) / otherScale;
   const spread = t < -0.5 ? t - Math.log(r) : -log1pmx(t);
   return spread + r * exponentialRemainder(-d);
 }
-export function laplaceKl_location(location: number, scale: number, otherLocation: number, otherScale: number): number {
+export function laplaceKl_location(
+  location: number,
+  scale: number,
+  otherLocation: number,
+  otherScale: number,
+): number {
   const gap = location - otherLocation;
   return (-sign(gap) * Math.expm1(-Math.abs(gap) / scale)) / otherScale;
 }
-export function laplaceKl_scale(location: number, scale: number, otherLocation: number, otherScale: number): number {
+export function laplaceKl_scale(
+  location: number,
+  scale: number,
+  otherLocation: number,
+  otherScale: number,
+): number {
   // 1/otherScale · (1 − otherScale/scale + exp(−d)(1 + d) − 1)
   const d = Math.abs(location - otherLocation) / scale;
   const tail = exponentialRemainder(-d) + d * Math.expm1(-d);

@@ -100,7 +100,7 @@ export function normalKl_mean(mean: number, _sd: number, otherMean: number, othe
   return (mean - otherMean) / otherSd / otherSd;
 }
 export function normalKl_sd(_mean: number, sd: number, _otherMean: number, otherSd: number): number {
-  return ((sd - otherSd) / otherSd) * ((sd + otherSd) / otherSd) / sd;
+  return (((sd - otherSd) / otherSd) * ((sd + otherSd) / otherSd)) / sd;
 }
 export function normalKl_otherMean(mean: number, _sd: number, otherMean: number, otherSd: number): number {
   return -((mean - otherMean) / otherSd) / otherSd;

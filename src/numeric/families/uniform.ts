@@ -84,15 +84,35 @@ export function uniformKl(lower: number, upper: number, otherLower: number, othe
   // log1p of the excess width keeps the accuracy where the intervals nearly agree.
   return Math.log1p((lower - otherLower + (otherUpper - upper)) / (upper - lower));
 }
-export function uniformKl_lower(lower: number, upper: number, _otherLower: number, _otherUpper: number): number {
+export function uniformKl_lower(
+  lower: number,
+  upper: number,
+  _otherLower: number,
+  _otherUpper: number,
+): number {
   return 1.0 / (upper - lower);
 }
-export function uniformKl_upper(lower: number, upper: number, _otherLower: number, _otherUpper: number): number {
+export function uniformKl_upper(
+  lower: number,
+  upper: number,
+  _otherLower: number,
+  _otherUpper: number,
+): number {
   return -1.0 / (upper - lower);
 }
-export function uniformKl_otherLower(_lower: number, _upper: number, otherLower: number, otherUpper: number): number {
+export function uniformKl_otherLower(
+  _lower: number,
+  _upper: number,
+  otherLower: number,
+  otherUpper: number,
+): number {
   return -1.0 / (otherUpper - otherLower);
 }
-export function uniformKl_otherUpper(_lower: number, _upper: number, otherLower: number, otherUpper: number): number {
+export function uniformKl_otherUpper(
+  _lower: number,
+  _upper: number,
+  otherLower: number,
+  otherUpper: number,
+): number {
   return 1.0 / (otherUpper - otherLower);
 }

@@ -1,0 +1,106 @@
+// The public surface: explicit named exports, nothing else.
+
+export type { Bound, BoundEstimate, BoundParts } from './bounds/bound.js';
+export { type ElboOptions, elbo } from './bounds/elbo.js';
+export type { DivergenceChoice } from './bounds/latentDivergence.js';
+export type {
+  ClosedWhereAll,
+  Covers,
+  MissingLatents,
+  NoClosedForm,
+  NotPathwise,
+  ObservedInRecognizer,
+  Pathwise,
+  UnknownLatents,
+} from './bounds/pairing.js';
+export { type Bernoulli, type BernoulliOptions, bernoulli } from './distributions/bernoulli.js';
+export { type Categorical, type CategoricalOptions, categorical } from './distributions/categorical.js';
+export type {
+  Distribution,
+  HasCdf,
+  HasEntropy,
+  HasMean,
+  HasMode,
+  HasQuantile,
+  HasVariance,
+  Route,
+} from './distributions/distribution.js';
+export { type Exponential, type ExponentialOptions, exponential } from './distributions/exponential.js';
+export { type Laplace, type LaplaceOptions, laplace } from './distributions/laplace.js';
+export { type Logistic, type LogisticOptions, logistic } from './distributions/logistic.js';
+export { type LogNormal, type LogNormalOptions, logNormal } from './distributions/logNormal.js';
+export {
+  type MultivariateNormal,
+  type MultivariateNormalOptions,
+  multivariateNormal,
+} from './distributions/multivariateNormal.js';
+export { type Normal, type NormalOptions, normal } from './distributions/normal.js';
+export { type Poisson, type PoissonOptions, poisson } from './distributions/poisson.js';
+export { type Product, type ProductBase, product } from './distributions/product.js';
+export { type Uniform, type UniformOptions, uniform } from './distributions/uniform.js';
+export { type ClosedPartner, kl, type NoClosedKl, sampledKl } from './divergence/kl.js';
+export { hasClosedKl, registerKl } from './divergence/registerKl.js';
+export type { ClosedKlPairs, HasClosedKl } from './divergence/registry.js';
+export {
+  CheckpointError,
+  DivergenceError,
+  EnvironmentError,
+  type ErrorCode,
+  GradientError,
+  LeadlineError,
+  ModelError,
+  ParameterError,
+  ShapeError,
+  StreamError,
+  TrainingError,
+} from './errors.js';
+export type { DataValue } from './models/data.js';
+export { DirectedModel, directed, type ModelData, type TakenName } from './models/directed.js';
+export { type Masked, masked } from './models/masked.js';
+export type { Conditional, ModelNode, Values } from './models/node.js';
+export { type Head, head } from './networks/head.js';
+export {
+  type Activation,
+  multilayerPerceptron,
+  type Network,
+  type PerceptronOptions,
+} from './networks/multilayerPerceptron.js';
+export { seedWeights } from './networks/seedWeights.js';
+export { restoreStream, Stream, type StreamState, stream } from './random/stream.js';
+export type { Support, SupportName } from './support/support.js';
+export { checkValues } from './tensor/backend.js';
+export type { NestedNumbers, ParameterValue } from './tensor/checks.js';
+export { composed } from './tensor/composed.js';
+export { detach } from './tensor/detach.js';
+export { lift, type ScalarFormula } from './tensor/lift.js';
+export { logSumExp } from './tensor/logSumExp.js';
+export {
+  digamma,
+  erf,
+  erfc,
+  erfcx,
+  log1mexp,
+  logGamma,
+  logNormalCdf,
+  logSigmoid,
+  normalCdf,
+  normalQuantile,
+  normalQuantileFromLog,
+  sigmoid,
+  softplus,
+  softplusInverse,
+} from './tensor/special.js';
+export { type BackendOptions, useFastestBackend } from './tensor/useFastestBackend.js';
+export type { BatchData, Tensors } from './training/batchData.js';
+export { checkpoint, resume } from './training/checkpoint.js';
+export {
+  type CheckpointContents,
+  type CheckpointTargets,
+  decodeCheckpoint,
+  encodeCheckpoint,
+  type Resumed,
+} from './training/checkpointBytes.js';
+export { type EvaluatedBound, type EvaluateOptions, evaluateBound } from './training/evaluateBound.js';
+export { type Batch, type BatchCursor, type MinibatchOptions, minibatches } from './training/minibatches.js';
+export { train } from './training/train.js';
+export type { HeldOutOptions, Progress, TrainingCursor, TrainOptions } from './training/trainOptions.js';

@@ -1,0 +1,95 @@
+import {
+  gammaLogScale,
+  gammaLogShare,
+  gammaSide,
+  gammaSlope,
+  incompleteGamma,
+  logGammaScale,
+} from './incompleteGammaCore.js';
+import { log1mexp } from './log1mexp.js';
+
+// The regularized incomplete gamma functions P(a, x) and Q(a, x) = 1 − P(a, x), shape a > 0, x ≥ 0: the
+// distribution function of a gamma variable with rate 1 and its complement. DLMF 8.2.4. The algorithms stand in
+// incompleteGammaCore.ts.
+
+/** P(a, x) = ∫₀ˣ t^{a−1} e^{−t} dt / Γ(a). */
+export function gammaP(a: number, x: number): number {
+  if (!(x > 0.0)) return x < 0.0 ? NaN : x;
+  if (x === Infinity) return 1.0;
+  incompleteGamma(a, x, false);
+  return gammaSide === 0.0 ? Math.exp(gammaLogShare) : -Math.expm1(gammaLogShare);
+}
+export function gammaP_a(a: number, x: number): number {
+  if (!(x > 0.0) || x === Infinity) return x >= 0.0 ? 0.0 : NaN;
+  incompleteGamma(a, x, true);
+  return Math.exp(gammaLogScale) * gammaSlope;
+}
+export function gammaP_x(a: number, x: number): number {
+  if (x === 0.0) return a < 1.0 ? Infinity : a === 1.0 ? 1.0 : 0.0;
+  if (x === Infinity) return 0.0;
+  return Math.exp(logGammaScale(a, x) - Math.log(x)) * a;
+}
+
+/** Q(a, x) = ∫ₓ^∞ t^{a−1} e^{−t} dt / Γ(a). */
+export function gammaQ(a: number, x: number): number {
+  if (!(x > 0.0)) return x < 0.0 ? NaN : 1.0 - x;
+  if (x === Infinity) return 0.0;
+  incompleteGamma(a, x, false);
+  return gammaSide === 1.0 ? Math.exp(gammaLogShare) : -Math.expm1(gammaLogShare);
+}
+export function gammaQ_a(a: number, x: number): number {
+  return -gammaP_a(a, x);
+}
+export function gammaQ_x(a: number, x: number): number {
+  return -gammaP_x(a, x);
+}
+
+/** log P(a, x), beyond the underflow of P and without the rounding of P near 1. */
+export function logGammaP(a: number, x: number): number {
+  if (!(x > 0.0)) return x === 0.0 ? -Infinity : NaN;
+  if (x === Infinity) return 0.0;
+  incompleteGamma(a, x, false);
+  return gammaSide === 0.0 ? gammaLogShare : log1mexp(gammaLogShare);
+}
+export function logGammaP_a(a: number, x: number): number {
+  if (!(x > 0.0)) return x === 0.0 ? -Infinity : NaN;
+  if (x === Infinity) return 0.0;
+  incompleteGamma(a, x, true);
+  return Math.exp(gammaLogScale - logLower()) * gammaSlope;
+}
+export function logGammaP_x(a: number, x: number): number {
+  if (!(x > 0.0)) return x === 0.0 ? Infinity : NaN;
+  if (x === Infinity) return 0.0;
+  incompleteGamma(a, x, false);
+  return (Math.exp(gammaLogScale - logLower()) * a) / x;
+}
+
+/** log Q(a, x), beyond the underflow of Q and without the rounding of Q near 1. */
+export function logGammaQ(a: number, x: number): number {
+  if (!(x > 0.0)) return x === 0.0 ? 0.0 : NaN;
+  if (x === Infinity) return -Infinity;
+  incompleteGamma(a, x, false);
+  return gammaSide === 1.0 ? gammaLogShare : log1mexp(gammaLogShare);
+}
+export function logGammaQ_a(a: number, x: number): number {
+  if (!(x > 0.0)) return x === 0.0 ? 0.0 : NaN;
+  if (x === Infinity) return Infinity;
+  incompleteGamma(a, x, true);
+  return -Math.exp(gammaLogScale - logUpper()) * gammaSlope;
+}
+export function logGammaQ_x(a: number, x: number): number {
+  if (!(x > 0.0)) return x === 0.0 ? -gammaP_x(a, x) : NaN;
+  if (x === Infinity) return -1.0;
+  incompleteGamma(a, x, false);
+  return (-Math.exp(gammaLogScale - logUpper()) * a) / x;
+}
+
+/** log P after a call of incompleteGamma. */
+function logLower(): number {
+  return gammaSide === 0.0 ? gammaLogShare : log1mexp(gammaLogShare);
+}
+
+/** log Q after a call of incompleteGamma. */
+function logUpper(): number {
+  return gammaSide === 1.0 ? gammaLogShare : log1mexp(gammaLogShare);
+}
