@@ -77,8 +77,8 @@ it('first integers, order, counts, categories, gammas', () => {
       3,
     ),
   ]).toEqual([2, 1, 0, 2, 0, 1, 2, 2]);
-  expect(bits(gammaDraws(s, Float32Array.of(0.1, 1, 2.5, 1e4)))).toBe('372bc88f 400e3944 400ac2f0 461b1263');
+  expect(bits(gammaDraws(s, Float32Array.of(0.1, 1, 2.5, 1e4)))).toBe('3d894c55 400e3944 400ac2f0 461b1263');
   expect(bits(logGammaDraws(s, Float32Array.of(1e-3, 0.1, 1, 2.5, 1e4)))).toBe(
-    'c48ad194 c186e8a2 c07cd268 3ee1f53b 4113633a',
+    'c402d2cc c06397be c07cd268 3ee1f53b 4113633a',
   );
 });

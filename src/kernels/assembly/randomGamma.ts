@@ -1,7 +1,7 @@
 // Compiled by AssemblyScript only. Gamma draws with scale 1 and a shape per element (G. Marsaglia and
 // W. W. Tsang, A simple method for generating gamma variables, ACM TOMS 26(3), 2000).
-import { nextCell, nextFine } from './_randomWords';
-import { nextNormal } from './_randomScalars';
+import { nextExponential, nextNormal } from './_randomScalars';
+import { nextCell } from './_randomWords';
 
 /** Shape ≥ 1. */
 function gammaFromOne(state: usize, shape: f64): f64 {
@@ -19,19 +19,15 @@ function gammaFromOne(state: usize, shape: f64): f64 {
 }
 
 /**
- * The logarithm of a gamma draw. Below shape 1, log G(shape + 1) + log(U) / shape (their section 6): the draw
- * itself would underflow for small shapes, its logarithm does not.
+ * A gamma draw of shape below 1 is one of shape + 1 times U^(1/shape) (their section 6), and −log U is an
+ * exponential draw. The product underflows for small shapes; its logarithm does not.
  */
-function logGammaDraw(state: usize, shape: f64): f64 {
-  if (shape >= 1.0) return Math.log(gammaFromOne(state, shape));
-  const above = Math.log(gammaFromOne(state, shape + 1.0));
-  return above + Math.log(nextFine(state)) / shape;
-}
-
 export function fillGamma(state: usize, out: usize, n: i32, shapes: usize): void {
   for (let i = 0; i < n; i++) {
     const shape = <f64>load<f32>(shapes + 4 * <usize>i);
-    const draw = shape >= 1.0 ? gammaFromOne(state, shape) : Math.exp(logGammaDraw(state, shape));
+    let draw: f64;
+    if (shape >= 1.0) draw = gammaFromOne(state, shape);
+    else draw = gammaFromOne(state, shape + 1.0) * Math.exp(-nextExponential(state) / shape);
     store<f32>(out + 4 * <usize>i, <f32>draw);
   }
 }
@@ -39,6 +35,9 @@ export function fillGamma(state: usize, out: usize, n: i32, shapes: usize): void
 export function fillLogGamma(state: usize, out: usize, n: i32, shapes: usize): void {
   for (let i = 0; i < n; i++) {
     const shape = <f64>load<f32>(shapes + 4 * <usize>i);
-    store<f32>(out + 4 * <usize>i, <f32>logGammaDraw(state, shape));
+    let draw: f64;
+    if (shape >= 1.0) draw = Math.log(gammaFromOne(state, shape));
+    else draw = Math.log(gammaFromOne(state, shape + 1.0)) - nextExponential(state) / shape;
+    store<f32>(out + 4 * <usize>i, <f32>draw);
   }
 }
