@@ -6,7 +6,7 @@ import { findFlaw } from './diagnose.js';
 import { holdState } from './heldState.js';
 import { requireSlotOrder } from './optimizerState.js';
 import { rescueNorm } from './rescueNorm.js';
-import { type BoundParts, listParts, partsOf, type Trainable } from './trainable.js';
+import { listParts, type Parts, partsOf, type Trainable } from './trainable.js';
 import type { NamedVariable } from './variables.js';
 
 /** What a step is taken on. */
@@ -24,7 +24,7 @@ export interface StepInput<Data> {
 export interface StepReport {
   /** The mean bound of the batch, in nats per data point. */
   readonly bound: number;
-  readonly parts: BoundParts<number>;
+  readonly parts: Parts<number>;
   /** The gradient's Euclidean norm over all variables, before clipping. */
   readonly gradientNorm: number;
 }
@@ -33,7 +33,7 @@ export interface StepReport {
 interface Pass {
   readonly loss: tf.Scalar;
   readonly value: tf.Tensor;
-  readonly parts: BoundParts<tf.Tensor>;
+  readonly parts: Parts<tf.Tensor>;
   readonly grads: tf.NamedTensorMap;
 }
 

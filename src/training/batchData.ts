@@ -40,10 +40,10 @@ export type Tensors<Data> = { [Name in keyof Data]: Batched<Data[Name]> };
 /** What batched data of type `Data` may be given as: tensors, or arrays in their place. */
 export type DataFor<Data> = { readonly [Name in keyof Data]: EntryFor<Data[Name]> };
 
-type EntryFor<Entry> = [tf.Tensor] extends [Entry]
+type EntryFor<Entry> = Entry extends tf.Tensor
   ? Entry | NumberArray | readonly NumberArray[] | NestedNumbers
-  : Entry extends tf.Tensor
-    ? Entry | NumberArray | readonly NumberArray[] | NestedNumbers
+  : Entry extends NumberArray | readonly unknown[]
+    ? Entry
     : Entry extends Plain
       ? { readonly [Key in keyof Entry]: EntryFor<Entry[Key]> }
       : Entry;

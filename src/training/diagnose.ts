@@ -1,6 +1,6 @@
 import * as tf from '@tensorflow/tfjs';
 import type { Stream } from '../random/stream.js';
-import { type BoundParts, listParts, type Trainable } from './trainable.js';
+import { listParts, type Parts, type Trainable } from './trainable.js';
 import type { NamedVariable } from './variables.js';
 
 /** The first value that is not finite, and its position. */
@@ -29,7 +29,7 @@ export async function blameParts<Data>(
   data: Data,
   draws: () => Stream,
   variables: readonly NamedVariable[],
-  parts: BoundParts<unknown>,
+  parts: Parts<unknown>,
 ): Promise<string[]> {
   const blamed: string[] = [];
   for (const [i, { label }] of listParts(parts).entries()) {

@@ -4,7 +4,7 @@ import { requireStream, type Stream } from '../random/stream.js';
 import { requireKnownKeys } from '../tensor/checks.js';
 import type { BatchData, DataFor } from './batchData.js';
 import { minibatches } from './minibatches.js';
-import { type BoundParts, listParts, partsOf, type Trainable } from './trainable.js';
+import { listParts, type Parts, partsOf, type Trainable } from './trainable.js';
 
 /** A bound over a whole data set. */
 export interface EvaluatedBound {
@@ -13,7 +13,7 @@ export interface EvaluatedBound {
   /** The standard error of that mean over data points; NaN for a single one. */
   readonly standardError: number;
   /** The mean of each part, in nats per data point. */
-  readonly parts: BoundParts<number>;
+  readonly parts: Parts<number>;
   /** The number of data points. */
   readonly points: number;
 }

@@ -2,7 +2,7 @@ import * as tf from '@tensorflow/tfjs';
 import { TrainingError } from '../errors.js';
 import type { Stream } from '../random/stream.js';
 import { blameParts, findFlaw } from './diagnose.js';
-import { type BoundParts, listParts, type Trainable } from './trainable.js';
+import { listParts, type Parts, type Trainable } from './trainable.js';
 import type { NamedVariable } from './variables.js';
 
 /** A step some statistic of which is not finite. */
@@ -15,7 +15,7 @@ export interface DoubtfulStep<Data> {
   readonly clip: number;
   readonly loss: tf.Tensor;
   readonly value: tf.Tensor;
-  readonly parts: BoundParts<tf.Tensor>;
+  readonly parts: Parts<tf.Tensor>;
   readonly gradients: readonly tf.Tensor[];
   readonly variables: readonly NamedVariable[];
 }

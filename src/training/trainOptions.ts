@@ -8,7 +8,7 @@ import type { EvaluatedBound } from './evaluateBound.js';
 import type { BatchCursor } from './minibatches.js';
 import { requireOptimizer } from './optimizerState.js';
 import { Snapshot } from './snapshot.js';
-import type { BoundParts, Trainable } from './trainable.js';
+import type { Parts, Trainable } from './trainable.js';
 import type { VariableSource } from './variables.js';
 
 /** Where a training run stands: a plain JSON value, to be kept in a checkpoint and given back as `from`. */
@@ -71,7 +71,7 @@ export interface Progress {
   /** The batch's mean bound before the step, in nats per data point. */
   readonly bound: number;
   /** The bound's parts, in nats per data point. */
-  readonly parts: BoundParts<number>;
+  readonly parts: Parts<number>;
   /** The gradient's Euclidean norm over all variables, before clipping. */
   readonly gradientNorm: number;
   /** Steps per second, over the last 100. */

@@ -2,7 +2,7 @@ import type * as tf from '@tensorflow/tfjs';
 import type { Stream } from '../random/stream.js';
 
 /** Per-point terms of a bound, by the node they belong to, in nats. */
-export interface BoundParts<Term> {
+export interface Parts<Term> {
   /** The log-likelihood of each observed node. */
   readonly logLikelihood: Readonly<Record<string, Term>>;
   /** The divergence of each latent. */
@@ -19,7 +19,7 @@ export interface Trainable<Data> {
     readonly value: tf.Tensor;
     /** A scalar, summed over data points, whose gradient is the estimator. */
     readonly surrogate: tf.Tensor;
-    readonly parts: BoundParts<tf.Tensor>;
+    readonly parts: Parts<tf.Tensor>;
   };
 }
 
@@ -32,7 +32,7 @@ export interface NamedPart<Term> {
 }
 
 /** The parts of a bound as a list, log-likelihoods first. */
-export function listParts<Term>(parts: BoundParts<Term>): NamedPart<Term>[] {
+export function listParts<Term>(parts: Parts<Term>): NamedPart<Term>[] {
   const list: NamedPart<Term>[] = [];
   for (const [node, term] of Object.entries(parts.logLikelihood)) {
     list.push({ kind: 'logLikelihood', node, label: `log-likelihood of ${node}`, term });
@@ -44,7 +44,7 @@ export function listParts<Term>(parts: BoundParts<Term>): NamedPart<Term>[] {
 }
 
 /** The same parts as records, with one number for each. */
-export function partsOf(list: readonly NamedPart<unknown>[], values: ArrayLike<number>): BoundParts<number> {
+export function partsOf(list: readonly NamedPart<unknown>[], values: ArrayLike<number>): Parts<number> {
   const parts = { logLikelihood: {} as Record<string, number>, divergence: {} as Record<string, number> };
   for (const [i, { kind, node }] of list.entries()) parts[kind][node] = values[i]!;
   return parts;

@@ -231,7 +231,7 @@ describe('stopping', () => {
   it('by patience puts the best weights back, those of the best held-out bound', async () => {
     const { bound, variables, list } = toy();
     const best = snapshot(variables);
-    // A rate this large overshoots in the end, so that the held-out bound falls again.
+    // Few rows, and held-out ones from another plane: what helps on the one comes to hurt on the other.
     const seen: { step: number; bound: number; improved: boolean; bits: string }[] = [];
     let end: Progress | undefined;
     for await (const progress of train({
