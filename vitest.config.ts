@@ -9,8 +9,8 @@ export default defineConfig({
   test: {
     include: ['test/**/*.test.ts'],
     // Statistical tests and training runs share two cores with each other; the limit is there to catch a hang.
-    testTimeout: 120_000,
-    hookTimeout: 240_000,
+    testTimeout: 240_000,
+    hookTimeout: 480_000,
     maxWorkers: 2,
     // A test left focused would silence all others in its file.
     allowOnly: false,

@@ -1,4 +1,5 @@
 import { existsSync, readdirSync, readFileSync } from 'node:fs';
+import { isBuiltin } from 'node:module';
 import { join } from 'node:path';
 import ts from 'typescript';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
@@ -139,39 +140,50 @@ describe("the README's first example", () => {
     const parameters = 'main.ts --noEmit --strict --target es2022 --module nodenext --pretty false'.split(
       ' ',
     );
-    await node([tools.tsc, ...parameters, '--skipLibCheck'], project.folder);
-    const whole = await node([tools.tsc, ...parameters], project.folder).catch(
+    const told = await node([tools.tsc, ...parameters], project.folder).then(
+      () => '',
       (error: Error) => error.message,
     );
-    const own = String(whole)
-      .split('\n')
-      .filter((line) => /^(main\.ts|node_modules\/leadline\/)/.test(line));
-    expect(own).toEqual([]);
+    const errors = told.split('\n').filter((line) => line.includes('error TS'));
+    // Declarations are checked too, and those of other packages have errors of their own.
+    expect(errors.filter((line) => !/^[^(]*\bnode_modules\/(?!leadline\/)/.test(line))).toEqual([]);
+    expect(told === '' || errors.length > 0, told).toBe(true);
   });
 
   describe.each([
-    { title: 'without the wasm backend', also: [] },
-    { title: 'with the wasm backend', also: [peers.wasm] },
-  ])('bundled for a browser $title', ({ also }) => {
+    { title: 'without the wasm backend', also: [], start: '' },
+    {
+      title: 'with the wasm backend',
+      also: [peers.wasm],
+      start:
+        "await library.useFastestBackend({ loadWasm: () => import('@tensorflow/tfjs-backend-wasm') });\n",
+    },
+  ])('bundled for a browser $title', ({ also, start }) => {
     let output: string;
 
     beforeAll(async () => {
       if (also.length > 0) await project.install(...also);
       output = join(project.folder, `bundle-${also.length}`);
       await project.write('index.html', '<!doctype html><script type="module" src="/browser.ts"></script>');
+      // Preloading is a matter of page speed and would need more of a page than stands in for one below.
+      await project.write('vite.config.js', 'export default { build: { modulePreload: false } };');
       // Holding on to the whole of the library keeps the bundler from dropping what the example does not use.
-      await project.write('browser.ts', `${wholeLibrary}import './main.ts';\n`);
+      await project.write('browser.ts', `${wholeLibrary}${start}await import('./main.ts');\n`);
       await node([tools.vite, 'build', '--logLevel', 'warn', '--outDir', output], project.folder);
     });
 
     it('leaves no import unresolved', () => {
       const assets = join(output, 'assets');
       const scripts = readdirSync(assets).filter((name) => name.endsWith('.js'));
-      const left = scripts.flatMap((name) => importsOf(name, readFileSync(join(assets, name), 'utf8')));
+      const imports = scripts.flatMap((name) => importsOf(name, readFileSync(join(assets, name), 'utf8')));
+      // What a platform may lack, the library imports only when it is asked for, hidden from bundlers, and does
+      // without or says what is missing.
+      const mayLack = (name: string) => isBuiltin(name) || name in manifest.peerDependenciesMeta;
+      const left = imports.filter(
+        ({ specifier, deferred }) => !specifier.startsWith('.') && !(deferred && mayLack(specifier)),
+      );
       expect(scripts).not.toEqual([]);
-      expect(
-        left.map(({ specifier }) => specifier).filter((specifier) => !specifier.startsWith('.')),
-      ).toEqual([]);
+      expect(left.map(({ specifier }) => specifier)).toEqual([]);
     });
 
     it('runs with what a browser has, without a download', async () => {

@@ -28,7 +28,8 @@ export function run(file: string, parameters: readonly string[], folder: string)
   const options = { cwd: folder, env, maxBuffer: 1e8, shell: process.platform === 'win32' && file === 'npm' };
   return new Promise((resolve, reject) => {
     execFile(file, parameters, options, (error, stdout, stderr) => {
-      if (error) reject(new Error(`${file} ${parameters.join(' ')} in ${folder}\n${stdout}\n${stderr}`));
+      const told = () => `${stdout}\n${stderr}`.replace(/.{400}.+/g, (line) => `${line.slice(0, 400)}…`);
+      if (error) reject(new Error(`${file} ${parameters.join(' ')} in ${folder}\n${told()}`));
       else resolve({ stdout, stderr });
     });
   });
