@@ -24,9 +24,8 @@ export interface NotPathwise<Names> {
   readonly 'the elbo needs draws that carry a gradient; these latents have route none': Names;
 }
 /** What the compiler shows where closed divergences are asked for and some do not exist. */
-export interface NoClosedForm<Names> {
-  readonly 'no closed-form divergence for these latents; use sampled, or registerKl': Names;
-}
+export type NoClosedForm<Name extends string> =
+  `no closed-form divergence for the latent '${Name}'; use 'sampled', or registerKl`;
 
 type NonPathwise<L extends Nodes> = {
   [K in keyof L]: 'none' extends L[K]['route'] ? K : never;
@@ -53,7 +52,7 @@ export type Pathwise<R extends Nodes> = [NonPathwise<R>] extends [never]
 /** `'closed'` where every latent has a closed divergence, an error message otherwise. */
 export type ClosedWhereAll<L extends Nodes, R extends Nodes> = [WithoutClosed<L, R>] extends [never]
   ? 'closed'
-  : NoClosedForm<WithoutClosed<L, R>>;
+  : NoClosedForm<WithoutClosed<L, R> & string>;
 
 /** A model and a recognizer that fit each other. */
 export interface Pairing {

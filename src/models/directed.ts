@@ -8,9 +8,8 @@ import type { ModelNode } from './node.js';
 import { Pass } from './pass.js';
 
 /** What the compiler shows for a name that is taken. */
-export interface TakenName<Name extends string> {
-  readonly 'this name is already declared in the model; choose another': Name;
-}
+export type TakenName<Name extends string> =
+  `the name '${Name}' is already declared in the model; choose another`;
 
 type Fresh<Name extends string, Taken> = Name extends Taken ? TakenName<Name> : Name;
 type ValuesOf<Names extends string> = { readonly [K in Names]: tf.Tensor };

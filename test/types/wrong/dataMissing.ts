@@ -1,0 +1,10 @@
+// expects: Property 'x' is missing in type '{}'
+import { directed, elbo, normal, product, stream } from '../../../src/index.js';
+
+const model = directed()
+  .latent('z', () => product(normal({ mean: [0], sd: 1 })))
+  .observed('x', ({ z }) => product(normal({ mean: z, sd: 1 })));
+const recognizer = directed()
+  .given('x')
+  .latent('z', ({ x }) => product(normal({ mean: x, sd: 1 })));
+elbo(model, recognizer).loss({}, stream(1));
