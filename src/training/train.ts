@@ -36,22 +36,23 @@ const longestHold = 100;
  * @example
  * ```ts
  * import * as tf from '@tensorflow/tfjs';
- * import { stream, train } from 'leadline';
- * const mean = tf.variable(tf.scalar(0));
- * const logLikelihood = {
- *   estimate: ({ x }: { x: tf.Tensor }) => {
- *     const value = tf.mul(tf.squaredDifference(x, mean), -0.5);
- *     return { value, surrogate: tf.sum(value), parts: { logLikelihood: { x: value }, divergence: {} } };
- *   },
- * };
- * const data = { x: [1, 2, 3, 4] };
- * const optimizer = tf.train.sgd(0.1);
- * for await (const { step, bound } of train({ bound: logLikelihood, data, optimizer, stream: stream(1), steps: 100 })) {
- *   if (step === 1) console.log(bound);
- *   // -3.75
+ * import { directed, elbo, normal, product, stream, train } from 'leadline';
+ * const shift = tf.variable(tf.zeros([1]));
+ * const model = directed()
+ *   .latent('z', () => product(normal({ mean: [0], sd: 1 })))
+ *   .observed('x', ({ z }) => product(normal({ mean: tf.add(z, shift), sd: 1 })));
+ * const recognizer = directed()
+ *   .given('x')
+ *   .latent('z', ({ x }) => product(normal({ mean: tf.div(tf.sub(x, shift), 2), variance: 0.5 })));
+ * const bound = elbo(model, recognizer);
+ * const data = { x: [[1], [2], [3], [4]] };
+ * const optimizer = tf.train.sgd(0.05);
+ * for await (const { step, ended } of train({ bound, data, optimizer, stream: stream(1), steps: 300 })) {
+ *   if (ended) console.log(step, ended);
+ *   // 300 steps
  * }
- * console.log((mean.arraySync() as number).toFixed(3));
- * // 2.500
+ * console.log(Math.abs(shift.dataSync()[0]! - 2.5) < 0.3);
+ * // true
  * ```
  */
 export async function* train<Data>(options: TrainOptions<Data>): AsyncGenerator<Progress, void, undefined> {

@@ -57,12 +57,12 @@ it('a run killed at random moments and resumed equals the uninterrupted one, bit
   expect(expected.size).toBe(steps);
 
   const draws = stream(73);
-  const [afterSteps, thenMs] = [draws.integers(17, [8]).dataSync(), draws.integers(60, [8]).dataSync()];
+  const [afterSteps, thenMs] = [draws.integers(17, [6]).dataSync(), draws.integers(60, [6]).dataSync()];
   const seen = new Map<number, string>();
   const starts: number[] = [];
   let kills = 0;
   for (let i = 0; ; i++) {
-    const attempt = i < 8 ? { afterSteps: afterSteps[i]!, thenMs: thenMs[i]! } : undefined;
+    const attempt = i < 6 ? { afterSteps: afterSteps[i]!, thenMs: thenMs[i]! } : undefined;
     const { lines, signal, code, errors } = await run(killed, steps, attempt);
     if (signal === 'SIGKILL') kills++;
     else expect(code, errors).toBe(0);
@@ -75,7 +75,7 @@ it('a run killed at random moments and resumed equals the uninterrupted one, bit
     if (lines.at(-1) === 'done') break;
   }
   // Otherwise the test has not tested: most runs must have been killed, and have gone on from within.
-  expect(kills).toBeGreaterThanOrEqual(5);
+  expect(kills).toBeGreaterThanOrEqual(4);
   expect(new Set(starts).size).toBeGreaterThanOrEqual(3);
   expect([...seen.keys()].sort((a, b) => a - b)).toEqual([...expected.keys()]);
   for (const file of ['weights', 'run.safetensors']) {
