@@ -10,6 +10,7 @@ import { gammaSlope, incompleteGamma } from './incompleteGammaCore.js';
  */
 export function gammaDrawDerivative(z: number, a: number): number {
   if (!(z > 0.0)) return z === 0.0 ? 0.0 : NaN;
+  if (z === Infinity) return Infinity;
   incompleteGamma(a, z, true);
   return (-z / a) * gammaSlope;
 }

@@ -3,6 +3,7 @@ import {
   gammaLogShare,
   gammaSide,
   gammaSlope,
+  gammaTail,
   incompleteGamma,
   logGammaScale,
 } from './incompleteGammaCore.js';
@@ -55,13 +56,13 @@ export function logGammaP_a(a: number, x: number): number {
   if (!(x > 0.0)) return x === 0.0 ? -Infinity : NaN;
   if (x === Infinity) return 0.0;
   incompleteGamma(a, x, true);
-  return Math.exp(gammaLogScale - logLower()) * gammaSlope;
+  return gammaSlope / lowerTail();
 }
 export function logGammaP_x(a: number, x: number): number {
   if (!(x > 0.0)) return x === 0.0 ? Infinity : NaN;
   if (x === Infinity) return 0.0;
   incompleteGamma(a, x, false);
-  return (Math.exp(gammaLogScale - logLower()) * a) / x;
+  return a / x / lowerTail();
 }
 
 /** log Q(a, x), beyond the underflow of Q and without the rounding of Q near 1. */
@@ -75,21 +76,21 @@ export function logGammaQ_a(a: number, x: number): number {
   if (!(x > 0.0)) return x === 0.0 ? 0.0 : NaN;
   if (x === Infinity) return Infinity;
   incompleteGamma(a, x, true);
-  return -Math.exp(gammaLogScale - logUpper()) * gammaSlope;
+  return -gammaSlope / upperTail();
 }
 export function logGammaQ_x(a: number, x: number): number {
   if (!(x > 0.0)) return x === 0.0 ? -gammaP_x(a, x) : NaN;
   if (x === Infinity) return -1.0;
   incompleteGamma(a, x, false);
-  return (-Math.exp(gammaLogScale - logUpper()) * a) / x;
+  return -a / x / upperTail();
 }
 
-/** log P after a call of incompleteGamma. */
-function logLower(): number {
-  return gammaSide === 0.0 ? gammaLogShare : log1mexp(gammaLogShare);
+/** P / D after a call of incompleteGamma. */
+function lowerTail(): number {
+  return gammaSide === 0.0 ? gammaTail : Math.exp(log1mexp(gammaLogShare) - gammaLogScale);
 }
 
-/** log Q after a call of incompleteGamma. */
-function logUpper(): number {
-  return gammaSide === 1.0 ? gammaLogShare : log1mexp(gammaLogShare);
+/** Q / D after a call of incompleteGamma. */
+function upperTail(): number {
+  return gammaSide === 1.0 ? gammaTail : Math.exp(log1mexp(gammaLogShare) - gammaLogScale);
 }

@@ -11,6 +11,8 @@ import { temme, temmeSlope, temmeSum } from './temme.js';
 export let gammaSide: number = 0.0;
 /** The logarithm of the share that was computed directly. */
 export let gammaLogShare: number = 0.0;
+/** That share divided by D: what the logarithm's derivatives need without the exponential. */
+export let gammaTail: number = 1.0;
 /** log D with D = x^a e^−x / Γ(a + 1). */
 export let gammaLogScale: number = 0.0;
 /** (∂P/∂a) / D, a number of moderate size, so that no exponential enters a ratio of derivatives. */
@@ -52,7 +54,8 @@ function uniform(a: number, x: number): void {
   const stirling = Math.exp(stirlingSeries(a));
   const bell = 0.5 * SQRT_2PI * Math.sqrt(a) * erfcx(size * Math.sqrt(0.5 * a));
   gammaSide = mu < 0.0 ? 0.0 : 1.0;
-  gammaLogShare = gammaLogScale + Math.log(stirling * (mu < 0.0 ? bell - temmeSum : bell + temmeSum));
+  gammaTail = stirling * (mu < 0.0 ? bell - temmeSum : bell + temmeSum);
+  gammaLogShare = gammaLogScale + Math.log(gammaTail);
   gammaSlope = -stirling * (ratio - 0.5 * eta + temmeSum * (Math.log1p(mu) - 0.5 / a) + temmeSlope);
 }
 
@@ -72,6 +75,7 @@ function series(a: number, x: number, withSlope: boolean): void {
   }
   if (withSlope) gammaSlope = (Math.log(x) - digamma(a + 1.0)) * sum - weighted;
   gammaSide = 0.0;
+  gammaTail = sum;
   gammaLogShare = gammaLogScale + Math.log(sum);
   if (a < 1.0 && x <= 1.1 && gammaLogShare > -0.693) smallShape(a, x);
 }
@@ -88,6 +92,7 @@ function smallShape(a: number, x: number): void {
   const u = a * Math.log(x) - logGamma1p(a);
   gammaSide = 1.0;
   gammaLogShare = Math.log(a * (Math.exp(u) * sum - Math.expm1(u) / a));
+  gammaTail = Math.exp(gammaLogShare - gammaLogScale);
 }
 
 function fraction(a: number, x: number, withSlope: boolean): void {
@@ -115,8 +120,8 @@ function fraction(a: number, x: number, withSlope: boolean): void {
     logd += factord;
     if (Math.abs(factor - 1.0) < 4e-16 && Math.abs(factord) <= 4e-16 * Math.abs(logd)) break;
   }
-  const tail = a / f;
-  if (withSlope) gammaSlope = -tail * (Math.log(x) - digamma(a) - logd);
+  gammaTail = a / f;
+  if (withSlope) gammaSlope = -gammaTail * (Math.log(x) - digamma(a) - logd);
   gammaSide = 1.0;
-  gammaLogShare = gammaLogScale + Math.log(tail);
+  gammaLogShare = gammaLogScale + Math.log(gammaTail);
 }

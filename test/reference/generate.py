@@ -10,9 +10,11 @@ Needs mpmath (written with 1.2.1). The points follow from literal seeds, so that
 import importlib
 import sys
 
+sys.dont_write_bytecode = True
+
 from machinery import write
 
-GROUPS = ['scalar', 'transforms', 'pair']
+GROUPS = ['scalar', 'transforms', 'pair', 'gamma', 'gamma_inverse']
 
 for group in sys.argv[1:] or GROUPS:
     write(group, importlib.import_module('group_' + group).tables())

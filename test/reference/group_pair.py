@@ -1,5 +1,5 @@
 """Plain functions of two arguments."""
-from mpmath import digamma, exp, expm1, log, log1p, loggamma, mpf
+from mpmath import digamma, log, loggamma, polygamma
 
 from machinery import HUGE, TINY, Draws, f32, fence, step
 
@@ -26,4 +26,24 @@ def tables():
     add('deviance_x', lambda x, m: log(x / m), near, corners, switches, ties)
     add('deviance_m', lambda x, m: 1 - x / m, near, corners, switches, ties)
     add('logRatio', lambda x, m: log(x / m), near, corners, switches, ties)
+
+    def any_pair(d):
+        return d.positive(), d.positive()
+
+    def shapes(d):
+        return d.log_uniform(1e-3, 1e6), d.log_uniform(1e-3, 1e6)
+
+    def mixed(d):
+        return any_pair(d) if d.random.random() < 0.4 else shapes(d)
+
+    # Both sides of the switch at 10, and of a = b.
+    tens = [(a, b) for a in (9.999999, 10.0) for b in (1e-30, 1e-3, 0.7, 9.999999, 10.0, 10.000001, 200.0, 1e8)]
+    tens += [(b, a) for a, b in tens]
+    halves = [(a, b) for a in fence(1, 2, steps=(0, 1, 8)) for b in (0.5, 1.0, 3.0)]
+    add('logBeta', lambda a, b: loggamma(a) + loggamma(b) - loggamma(a + b), mixed, corners, tens, halves)
+    add('logBeta_a', lambda a, b: digamma(a) - digamma(a + b), mixed, corners, tens, halves)
+    add('logBeta_b', lambda a, b: digamma(b) - digamma(a + b), mixed, corners, tens, halves)
+    eights = [(a, b) for a in fence(7, 8, 9, steps=(0, 1)) for b in (1e-30, 1e-3, 0.7, 7.5, 300.0, 1e30)]
+    add('digammaDifference', lambda a, b: digamma(a + b) - digamma(a), mixed, corners, tens, eights)
+    add('digammaDifference_b', lambda a, b: polygamma(1, a + b), mixed, corners, tens, eights)
     return tables

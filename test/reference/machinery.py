@@ -81,6 +81,9 @@ def evaluate(name, formula, args, digits):
     with mp.workdps(60):
         if mpmath.isnan(high) or (mpmath.isinf(high) and low != high):
             raise ArithmeticError(f'{name}{args}: {low} {high}')
+        # A result this small is zero in any case, and may have lost its digits to the exponent.
+        if abs(low) < mpf(10) ** -400 and abs(high) < mpf(10) ** -400:
+            return high
         if not mpmath.isinf(high) and abs(low - high) > mpf(10) ** -25 * abs(high):
             raise ArithmeticError(f'{name}{args}: the two precisions give {low} and {high}')
     return high
