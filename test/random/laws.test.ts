@@ -1,7 +1,19 @@
 import { describe, expect, it } from 'vitest';
 import { type NoiseKind, noise } from '../../src/random/noise.js';
 import { stream } from '../../src/random/stream.js';
-import { above, adLimit, andersonDarling, kolmogorov, ksLimit, type Law, laws, normalLimit } from './laws.js';
+import {
+  above,
+  adLimit,
+  andersonDarling,
+  chiSquaredTails,
+  kolmogorov,
+  ksLimit,
+  type Law,
+  laws,
+  normalLimit,
+  oneInAMillion,
+  pearson,
+} from './laws.js';
 
 const seeds: Record<NoiseKind, number> = {
   uniform: 101,
@@ -54,26 +66,63 @@ function tail(
 const binomialScore = (count: number, n: number, p: number) =>
   Math.abs(count - n * p) / Math.sqrt(n * p * (1 - p));
 
-it('counts normals beyond 4 and 5 standard deviations, on either side, in 1e8', () => {
-  const s = stream(107);
-  const count = { below5: 0, below4: 0, above4: 0, above5: 0 };
-  for (let i = 0; i < 100; i++) {
-    for (const x of noise(s, 'normal', 1_000_000)) {
-      if (x < -4) count[x < -5 ? 'below5' : 'below4']++;
-      else if (x > 4) count[x > 5 ? 'above5' : 'above4']++;
+/** Tail probabilities of Pearson's statistic with one more cell that holds everything else. */
+function pearsonTails(cells: Float64Array, expected: Float64Array, rest: number) {
+  const total = cells.reduce((a, b) => a + b);
+  const all = expected.reduce((a, b) => a + b) + rest;
+  const { statistic, degrees } = pearson([...cells, all - total], [...expected, rest]);
+  return chiSquaredTails(statistic, degrees);
+}
+
+describe('1e8 draws', () => {
+  const millions = 100;
+
+  it('of normals: the tails beyond 4 and 5 on either side, and the wedges of the ziggurat in between', () => {
+    const s = stream(107);
+    const count = { below5: 0, below4: 0, above4: 0, above5: 0 };
+    const cells = new Float64Array(512);
+    for (let i = 0; i < millions; i++) {
+      for (const x of noise(s, 'normal', 1_000_000)) {
+        if (x < -4) count[x < -5 ? 'below5' : 'below4']++;
+        else if (x >= 4) count[x > 5 ? 'above5' : 'above4']++;
+        else cells[Math.floor(64 * x) + 256]!++;
+      }
     }
-  }
-  const p5 = laws.normal.upper(5);
-  const p4 = laws.normal.upper(4) - p5;
-  expect(p5).toBeCloseTo(2.8665157187919333e-7, 20);
-  // Expected 3,139 each and 28.7 each. Binomial odds: 4.892 standard deviations, 1e-6, for the first; for the
-  // second Poisson(28.7) lies outside 7 … 62 with probability 1e-6 and 5e-8 (the sum of its masses).
-  expect(binomialScore(count.below4, 1e8, p4)).toBeLessThan(normalLimit);
-  expect(binomialScore(count.above4, 1e8, p4)).toBeLessThan(normalLimit);
-  for (const n of [count.below5, count.above5]) {
-    expect(n).toBeGreaterThanOrEqual(7);
-    expect(n).toBeLessThanOrEqual(62);
-  }
+    const p5 = laws.normal.upper(5);
+    const p4 = laws.normal.upper(4) - p5;
+    expect(p5).toBeCloseTo(2.8665157187919333e-7, 20);
+    // Expected 3,139 each and 28.7 each. Binomial odds: 4.892 standard deviations, 1e-6, for the first; for the
+    // second Poisson(28.7) lies outside 7 … 62 with probability 3e-7 and 2e-8 (the sum of its masses).
+    expect(binomialScore(count.below4, 1e8, p4)).toBeLessThan(normalLimit);
+    expect(binomialScore(count.above4, 1e8, p4)).toBeLessThan(normalLimit);
+    for (const n of [count.below5, count.above5]) {
+      expect(n).toBeGreaterThanOrEqual(7);
+      expect(n).toBeLessThanOrEqual(62);
+    }
+    const tails = 2 * laws.normal.upper(4);
+    const expected = cells.map((_, i) => {
+      const inner = Math.min(Math.abs(i - 256), Math.abs(i - 255)) / 64;
+      return 1e8 * (laws.normal.upper(inner) - laws.normal.upper(inner + 1 / 64));
+    });
+    const { lower, upper } = pearsonTails(cells, expected, 1e8 * tails);
+    expect(Math.min(lower, upper)).toBeGreaterThan(oneInAMillion);
+  });
+
+  it('of exponentials: the wedges', () => {
+    const s = stream(120);
+    const cells = new Float64Array(512);
+    let rest = 0;
+    for (let i = 0; i < millions; i++) {
+      for (const x of noise(s, 'exponential', 1_000_000)) {
+        if (x < 8) cells[Math.floor(64 * x)]!++;
+        else rest++;
+      }
+    }
+    expect(binomialScore(rest, 1e8, Math.exp(-8))).toBeLessThan(normalLimit); // 1e-6
+    const expected = cells.map((_, i) => -1e8 * Math.exp(-i / 64) * Math.expm1(-1 / 64));
+    const { lower, upper } = pearsonTails(cells, expected, 1e8 * Math.exp(-8));
+    expect(Math.min(lower, upper)).toBeGreaterThan(oneInAMillion);
+  });
 });
 
 // Where each sampler has code or arithmetic of its own for the tail: the law of what lies beyond, given that.
