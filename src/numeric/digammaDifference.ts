@@ -9,6 +9,8 @@ import { trigamma } from './trigamma.js';
  * log(1 + b/a) + (r − s)/2 + (r² − s²) times a divided difference, r = 1/a, s = 1/(a + b). DLMF 5.5.2, 5.11.2.
  */
 export function digammaDifference(a: number, b: number): number {
+  // Outside the domain the recurrence would climb for ever.
+  if (!(a >= 0.0 && b >= 0.0)) return NaN;
   let sum = 0.0;
   let x = a;
   while (x < 8.0) {

@@ -13,6 +13,7 @@ import { stirlingSeries } from './stirlingSeries.js';
 export function logBeta(a: number, b: number): number {
   const p = Math.min(a, b);
   const q = Math.max(a, b);
+  if (!(p >= 0.0)) return NaN;
   if (q < 10.0) return logGamma(p) + logGamma(q) - logGamma(p + q);
   if (q === Infinity) return -Infinity;
   const h = p / q;
