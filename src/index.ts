@@ -100,7 +100,12 @@ export {
   encodeCheckpoint,
   type Resumed,
 } from './training/checkpointBytes.js';
+export type { StoppingState } from './training/earlyStopping.js';
 export { type EvaluatedBound, type EvaluateOptions, evaluateBound } from './training/evaluateBound.js';
+export type { Json } from './training/json.js';
 export { type Batch, type BatchCursor, type MinibatchOptions, minibatches } from './training/minibatches.js';
+export { type Snapshot, snapshot } from './training/snapshot.js';
 export { train } from './training/train.js';
+export type { Parts, Trainable } from './training/trainable.js';
 export type { HeldOutOptions, Progress, TrainingCursor, TrainOptions } from './training/trainOptions.js';
+export type { VariableSource } from './training/variables.js';

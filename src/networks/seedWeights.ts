@@ -32,7 +32,12 @@ import { glorotUniform } from './initialWeights.js';
  */
 export function seedWeights(model: tf.LayersModel, stream: Stream): void {
   requireStream('seedWeights', stream);
-  if (typeof model !== 'object' || model === null || !Array.isArray(model.layers) || !model.built) {
+  if (
+    typeof model !== 'object' ||
+    model === null ||
+    !Array.isArray(model.layers) ||
+    !model.layers.every((layer) => layer.built)
+  ) {
     throw new ParameterError(
       `seedWeights: model must be a built tf.layers model; got ${describe(model)}; give its first layer an inputShape`,
     );

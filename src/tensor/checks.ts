@@ -16,7 +16,13 @@ export function describe(value: unknown): string {
   if (Array.isArray(value)) return `an array of ${value.length}`;
   if (value instanceof tf.Tensor) return `a tensor of shape ${shapeText(value.shape)}`;
   if (typeof value === 'function') return 'a function';
-  return `an object with keys ${Object.keys(value).join(', ') || '(none)'}`;
+  const prototype: unknown = Object.getPrototypeOf(value);
+  if (prototype !== null && prototype !== Object.prototype) {
+    return `an instance of ${(value as object).constructor.name}`;
+  }
+  const keys = Object.keys(value);
+  const shown = keys.slice(0, 6).join(', ') || '(none)';
+  return `an object with keys ${shown}${keys.length > 6 ? ', …' : ''}`;
 }
 
 /** A shape as messages print it. */

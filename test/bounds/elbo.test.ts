@@ -237,7 +237,7 @@ describe('weight and free nats', () => {
   const estimate = (options: object) =>
     elbo(gaussianModel(), plainRecognizer(), options).estimate({ x: x() }, stream(31));
   const scalar = (t: tf.Tensor) => t.dataSync()[0]!;
-  const sum = (t: tf.Tensor) => t.dataSync().reduce((a, v) => a + v, 0);
+  const sum = (t: tf.Tensor) => [...t.dataSync()].reduce((a, v) => a + v, 0);
 
   test('the surrogate carries the weight, the value stays the bound', () => {
     const plain = estimate({});
@@ -297,7 +297,7 @@ test('nothing leaks, with or without a gradient', () => {
 describe('wrong use', () => {
   const model = gaussianModel();
   const good = plainRecognizer();
-  const refuse = (act: () => unknown, kind: new (m: string) => LeadlineError, text: string) => {
+  const refuse = (act: () => unknown, kind: abstract new (...args: never[]) => LeadlineError, text: string) => {
     let caught: unknown;
     try {
       act();
