@@ -126,8 +126,9 @@ function requirePartial(where: string, formula: Formula, k: number): void {
     ? formula.compiled.partials[k] === -1
     : formula.partials?.[k] === undefined;
   if (missing) {
+    const name = formula.parameters[k];
     throw new GradientError(
-      `${where}: the gradient must be taken where one exists; got a derivative in ${formula.parameters[k]}, which ${formula.name} does not have; cut it with detach(…)`,
+      `${where}: the derivative must exist; got one in ${name}, where the formula has none; cut that argument with detach(…)`,
     );
   }
 }
