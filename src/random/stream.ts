@@ -91,8 +91,8 @@ export class Stream {
    * @example
    * ```ts
    * import { stream } from 'leadline';
-   * const x = stream(1).normal([10000]).dataSync();
-   * console.log((x.filter((v) => Math.abs(v) < 1).length / 10000).toFixed(2));
+   * const x = stream(1).normal([100000]).dataSync();
+   * console.log((x.filter((v) => Math.abs(v) < 1).length / 100000).toFixed(2));
    * // 0.68
    * ```
    */
@@ -107,8 +107,8 @@ export class Stream {
    * @example
    * ```ts
    * import { stream } from 'leadline';
-   * const x = stream(1).exponential([10000]).dataSync();
-   * console.log((x.filter((v) => v > 1).length / 10000).toFixed(2));
+   * const x = stream(1).exponential([100000]).dataSync();
+   * console.log((x.filter((v) => v > 1).length / 100000).toFixed(2));
    * // 0.37
    * ```
    */
