@@ -1,24 +1,7 @@
 // Compiled by AssemblyScript only. Draws of counts and of categories, with parameters per element.
+import { poissonLogDensity } from '../../numeric/families/poisson';
 import { nextExponential } from './_randomScalars';
 import { nextCell } from './_randomWords';
-
-// log k! for k < 10, where Stirling's series is not yet accurate.
-const LOG_FACTORIAL: StaticArray<f64> = [
-  0.0, 0.0, 0.6931471805599453, 1.791759469228055, 3.1780538303479458, 4.787491742782046, 6.579251212010101,
-  8.525161361065415, 10.604602902745251, 12.801827480081469,
-];
-
-/**
- * log of the Poisson mass at k for a rate ≥ 10, in Loader's saddle-point form (C. Loader, Fast and accurate
- * computation of binomial probabilities, 2000), since −rate + k log rate − log k! cancels for large rates.
- */
-function logMass(k: f64, rate: f64): f64 {
-  if (k < 10.0) return k * Math.log(rate) - rate - unchecked(LOG_FACTORIAL[<i32>k]);
-  const d = (rate - k) / k;
-  const w = 1.0 / (k * k);
-  const stirling = (1.0 / 12.0 - w * (1.0 / 360.0 - w * (1.0 / 1260.0 - w * (1.0 / 1680.0)))) / k;
-  return k * (Math.log1p(d) - d) - 0.5 * Math.log(6.283185307179586 * k) - stirling;
-}
 
 /** Counts unit-rate arrivals before `rate`: exact, and accurate for the smallest rates. */
 function countArrivals(state: usize, rate: f64): f64 {
@@ -58,7 +41,7 @@ export function fillPoisson(state: usize, out: usize, n: i32, rates: usize): voi
       const k = Math.floor((2.0 * a / us + b) * u + rate + 0.43);
       if (!(us >= 0.07 && v <= squeeze)) {
         if (k < 0.0 || (us < 0.013 && v > us)) continue;
-        if (Math.log((v * inverseAlpha) / (a / (us * us) + b)) > logMass(k, rate)) continue;
+        if (Math.log((v * inverseAlpha) / (a / (us * us) + b)) > poissonLogDensity(k, rate)) continue;
       }
       store<f32>(to, <f32>k);
       break;
