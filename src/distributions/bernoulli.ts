@@ -86,7 +86,7 @@ const make = scalarFamily({
  * import { bernoulli } from 'leadline';
  * const d = bernoulli({ logit: 100 });
  * console.log(d.logDensity(tf.tensor1d([0, 0.5])).arraySync());
- * // [-100, -Infinity]
+ * // [ -100, -Infinity ]
  * ```
  * Source: Johnson, Kemp and Kotz, Univariate Discrete Distributions, 3rd edition (2005), section 3.2.
  */

@@ -57,7 +57,7 @@ const forms: Record<string, Record<string, Form>> = {
  * import { categorical } from 'leadline';
  * const d = categorical({ probabilities: [0.5, 0.25, 0.25] });
  * console.log(d.logDensity(tf.tensor1d([0, 2, 3])).arraySync());
- * // [-0.6931471824645996, -1.3862943649291992, -Infinity]
+ * // [ -0.6931471824645996, -1.3862943649291992, -Infinity ]
  * ```
  * Source: Johnson, Kotz and Balakrishnan, Discrete Multivariate Distributions (1997), chapter 35.
  */

@@ -81,7 +81,7 @@ const make = scalarFamily({
  * import { exponential } from 'leadline';
  * const d = exponential({ rate: 2 });
  * console.log(d.logDensity(tf.tensor1d([-1, 0, 1])).arraySync());
- * // [-Infinity, 0.6931471824645996, -1.306852817535400]
+ * // [ -Infinity, 0.6931471824645996, -1.3068528175354004 ]
  * console.log(d.mean().arraySync());
  * // 0.5
  * ```

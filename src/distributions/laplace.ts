@@ -94,7 +94,7 @@ const make = scalarFamily({
  * import { laplace } from 'leadline';
  * const d = laplace({ location: 0, scale: 1 });
  * console.log(d.cdf(tf.tensor1d([-1, 0])).arraySync());
- * // [0.18393971025943756, 0.5]
+ * // [ 0.18393972516059875, 0.5 ]
  * ```
  * Source: Johnson, Kotz and Balakrishnan, Continuous Univariate Distributions 2 (1995), chapter 24.
  */

@@ -93,9 +93,9 @@ const make = scalarFamily({
  * import { logNormal } from 'leadline';
  * const d = logNormal({ location: 0, scale: 0.5 });
  * console.log(d.logDensity(tf.tensor1d([-1, 1])).arraySync());
- * // [-Infinity, -0.22579135000705719]
+ * // [ -Infinity, -0.2257913500070572 ]
  * console.log(d.mean().arraySync());
- * // 1.1331484317779541
+ * // 1.133148431777954
  * ```
  * Source: Johnson, Kotz and Balakrishnan, Continuous Univariate Distributions 1 (1994), chapter 14.
  */

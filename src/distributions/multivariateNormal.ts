@@ -53,7 +53,7 @@ const halfLogTwoPi = 0.5 * Math.log(2 * Math.PI);
  * import { multivariateNormal } from 'leadline';
  * const d = multivariateNormal({ mean: [0, 0], covarianceFactor: [[1, 0], [0.5, 1]] });
  * console.log(d.logDensity(tf.tensor2d([[0, 0], [1, 1]])).arraySync());
- * // [-1.8378770351409912, -2.4628770351409912]
+ * // [ -1.8378770351409912, -2.462877035140991 ]
  * ```
  * Source: Anderson, An Introduction to Multivariate Statistical Analysis, 3rd edition (2003), chapter 2.
  */

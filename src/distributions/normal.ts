@@ -91,7 +91,7 @@ const make = scalarFamily({
  * console.log(d.arrayShape, d.route);
  * // [ 2 ] pathwise
  * console.log(d.logDensity(tf.scalar(1)).arraySync());
- * // [-1.737085700035095, -1.612085700035095]
+ * // [ -1.7370857000350952, -1.6120857000350952 ]
  * ```
  * Source: Johnson, Kotz and Balakrishnan, Continuous Univariate Distributions 1 (1994), chapter 13.
  */

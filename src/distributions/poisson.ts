@@ -64,7 +64,7 @@ const make = scalarFamily({
  * import { poisson } from 'leadline';
  * const d = poisson({ rate: 3 });
  * console.log(d.logDensity(tf.tensor1d([0, 2.5])).arraySync());
- * // [-3, -Infinity]
+ * // [ -3, -Infinity ]
  * ```
  * Source: Johnson, Kemp and Kotz, Univariate Discrete Distributions, 3rd edition (2005), chapter 4; Loader,
  * Fast and Accurate Computation of Binomial Probabilities (2000).

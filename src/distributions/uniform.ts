@@ -88,7 +88,7 @@ function requireOrder({ lower, upper }: Record<string, Operand>): void {
  * import { uniform } from 'leadline';
  * const d = uniform({ lower: 0, upper: 4 });
  * console.log(d.logDensity(tf.tensor1d([1, 5])).arraySync());
- * // [-1.3862943649291992, -Infinity]
+ * // [ -1.3862943649291992, -Infinity ]
  * ```
  * Source: Johnson, Kotz and Balakrishnan, Continuous Univariate Distributions 2 (1995), chapter 26.
  */

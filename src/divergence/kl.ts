@@ -47,7 +47,7 @@ function requireSamePoints(where: string, q: Distribution, p: Distribution): voi
  * import { kl, normal } from 'leadline';
  * const q = normal({ mean: [0, 1], sd: 1 });
  * console.log(kl(q, normal({ mean: 0, sd: 1 })).arraySync());
- * // [0, 0.5]
+ * // [ 0, 0.5 ]
  * ```
  * Source: Kullback and Leibler, Ann. Math. Stat. 22 (1951) 79–86.
  */

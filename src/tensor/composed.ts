@@ -21,7 +21,7 @@ let depth = 0;
  * const logDensity = (x: tf.Tensor) => composed(() => normal({ mean: 0, sd: 0.5 }).logDensity(x));
  * const curvature = tf.grad((x) => tf.grad((y) => logDensity(y).sum())(x).sum());
  * console.log(curvature(tf.tensor1d([0.25])).arraySync());
- * // [-4]
+ * // [ -4 ]
  * ```
  */
 export function composed<T>(compute: () => T): T {

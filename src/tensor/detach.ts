@@ -17,7 +17,7 @@ import { runOnTape } from './engine.js';
  * import { detach } from 'leadline';
  * const gradient = tf.grad((x) => tf.mul(x, detach(x)).sum());
  * console.log(gradient(tf.tensor1d([3])).arraySync());
- * // [3]
+ * // [ 3 ]
  * ```
  */
 export function detach<T extends tf.Tensor>(tensor: T): T {

@@ -36,9 +36,9 @@ export interface ScalarFormula {
  * import { lift } from 'leadline';
  * const cube = lift({ name: 'cube', value: (x) => x ** 3, partials: [(x) => 3 * x * x] });
  * console.log(cube([1, 2]).arraySync());
- * // [1, 8]
+ * // [ 1, 8 ]
  * console.log(tf.grad((x) => cube(x).sum())(tf.tensor1d([1, 2])).arraySync());
- * // [3, 12]
+ * // [ 3, 12 ]
  * ```
  */
 export function lift(formula: ScalarFormula): (...values: ParameterValue[]) => tf.Tensor {

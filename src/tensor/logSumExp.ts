@@ -18,7 +18,7 @@ import { runHostOperation } from './hostOperation.js';
  * ```ts
  * import * as tf from '@tensorflow/tfjs';
  * import { logSumExp } from 'leadline';
- * console.log(logSumExp(tf.tensor1d([-0.0001, -9.2103901])).arraySync().toPrecision(4));
+ * console.log(logSumExp(tf.tensor1d([-0.0001, -9.2103901])).dataSync()[0]!.toPrecision(4));
  * // 3.059e-11
  * ```
  * Source: Blanchard, Higham and Higham, IMA J. Numer. Anal. 41 (2021) 2311–2330, algorithm 4.1.

@@ -50,7 +50,12 @@ async function heldOutBound(seed: string, latents: number) {
     epochs: 200,
     batchSize: 100,
   });
-  for await (const _ of run);
+  // 200 passes are 3,000 steps; what is alive after the first is alive after the last, and nothing more.
+  let first = 0;
+  for await (const { step } of run) {
+    if (step === 1) first = tf.memory().numTensors;
+    else if (tf.memory().numTensors !== first) throw new Error(`step ${step} leaks`);
+  }
   const many = elbo(model, recognizer, { draws: 10 });
   const result = await evaluateBound(many, { x: heldOut }, { stream: stream(`${seed} held out`) });
   const perDimension = tf.tidy(() => {

@@ -297,7 +297,11 @@ test('nothing leaks, with or without a gradient', () => {
 describe('wrong use', () => {
   const model = gaussianModel();
   const good = plainRecognizer();
-  const refuse = (act: () => unknown, kind: abstract new (...args: never[]) => LeadlineError, text: string) => {
+  const refuse = (
+    act: () => unknown,
+    kind: abstract new (...args: never[]) => LeadlineError,
+    text: string,
+  ) => {
     let caught: unknown;
     try {
       act();
