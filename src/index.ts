@@ -35,6 +35,7 @@ export {
   multivariateNormal,
 } from './distributions/multivariateNormal.js';
 export { type Normal, type NormalOptions, normal } from './distributions/normal.js';
+export type { OneOf } from './distributions/oneOf.js';
 export { type Poisson, type PoissonOptions, poisson } from './distributions/poisson.js';
 export { type Product, type ProductBase, product } from './distributions/product.js';
 export { type Uniform, type UniformOptions, uniform } from './distributions/uniform.js';

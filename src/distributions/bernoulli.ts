@@ -1,15 +1,15 @@
 import * as tf from '@tensorflow/tfjs';
 import { binary } from '../support/support.js';
-import type { ParameterValue } from '../tensor/checks.js';
 import { choose, composedSoftplus } from '../tensor/composedMath.js';
 import { kernel } from '../tensor/formula.js';
 import { logOdds } from '../tensor/transforms.js';
 import type { Distribution, HasCdf, HasEntropy, HasMean, HasMode, HasVariance } from './distribution.js';
+import type { OneOf } from './oneOf.js';
 import { finite, insideUnit } from './parameters.js';
 import { scalarFamily } from './scalarFamily.js';
 
 /** Parameters of {@link bernoulli}: exactly one. */
-export type BernoulliOptions = { readonly logit: ParameterValue } | { readonly probability: ParameterValue };
+export type BernoulliOptions = OneOf<'logit' | 'probability'>;
 
 /** An array of Bernoulli distributions. */
 export interface Bernoulli

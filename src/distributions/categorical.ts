@@ -5,13 +5,7 @@ import { categoricalDraws } from '../random/noise.js';
 import { requireStream, type Stream } from '../random/stream.js';
 import { categories } from '../support/support.js';
 import { valuesAreChecked } from '../tensor/backend.js';
-import {
-  type ParameterValue,
-  positionText,
-  requireCount,
-  requireTensor,
-  shapeText,
-} from '../tensor/checks.js';
+import { positionText, requireCount, requireTensor, shapeText } from '../tensor/checks.js';
 import { usesComposedForm } from '../tensor/composed.js';
 import { floatsOf, tensorOf } from '../tensor/engine.js';
 import { runHostOperation } from '../tensor/hostOperation.js';
@@ -19,12 +13,11 @@ import { rowLogSums } from '../tensor/logSumExp.js';
 import { composedTensor, detachedOperand, type Operand, operandData } from '../tensor/operand.js';
 import { logarithm } from '../tensor/transforms.js';
 import { type Distribution, drawShape, type HasEntropy, type HasMode } from './distribution.js';
+import type { OneOf } from './oneOf.js';
 import { type Form, finite, readParameters, unitClosed } from './parameters.js';
 
 /** Parameters of {@link categorical}: exactly one, the categories along its last axis. */
-export type CategoricalOptions =
-  | { readonly logits: ParameterValue }
-  | { readonly probabilities: ParameterValue };
+export type CategoricalOptions = OneOf<'logits' | 'probabilities'>;
 
 /** An array of categorical distributions. */
 export interface Categorical extends Distribution<'categorical', 'none'>, HasMode, HasEntropy {

@@ -1,6 +1,5 @@
 import * as tf from '@tensorflow/tfjs';
 import { positive } from '../support/support.js';
-import type { ParameterValue } from '../tensor/checks.js';
 import { choose } from '../tensor/composedMath.js';
 import { kernel } from '../tensor/formula.js';
 import { exponentiated, reciprocal } from '../tensor/transforms.js';
@@ -13,15 +12,12 @@ import type {
   HasQuantile,
   HasVariance,
 } from './distribution.js';
+import type { OneOf } from './oneOf.js';
 import { aboveZero, finite } from './parameters.js';
 import { scalarFamily } from './scalarFamily.js';
 
 /** Parameters of {@link exponential}: exactly one. */
-export type ExponentialOptions =
-  | { readonly rate: ParameterValue }
-  | { readonly logRate: ParameterValue }
-  | { readonly scale: ParameterValue }
-  | { readonly mean: ParameterValue };
+export type ExponentialOptions = OneOf<'rate' | 'logRate' | 'scale' | 'mean'>;
 
 /** An array of exponential distributions. */
 export interface Exponential
@@ -57,7 +53,7 @@ const make = scalarFamily({
   summaries: {
     mean: { ...kernel('reciprocal', (r) => tf.div(1, r!)), parameters: ['rate'] },
     variance: kernel('exponentialVariance', (r) => tf.div(1, tf.square(r!))),
-    mode: { ...kernel('exponentialMode', (r) => tf.zerosLike(r!)), parameters: ['rate'] },
+    mode: kernel('exponentialMode', (r) => tf.zerosLike(r!)),
     entropy: kernel('exponentialEntropy', (r) => tf.sub(1, tf.log(r!))),
   },
   functions: {

@@ -12,14 +12,12 @@ import type {
   HasQuantile,
   HasVariance,
 } from './distribution.js';
+import type { OneOf } from './oneOf.js';
 import { aboveZero, finite } from './parameters.js';
 import { scalarFamily } from './scalarFamily.js';
 
 /** Parameters of {@link laplace}. */
-export type LaplaceOptions = { readonly location: ParameterValue } & (
-  | { readonly scale: ParameterValue }
-  | { readonly logScale: ParameterValue }
-);
+export type LaplaceOptions = { readonly location: ParameterValue } & OneOf<'scale' | 'logScale'>;
 
 /** An array of Laplace distributions. */
 export interface Laplace

@@ -14,14 +14,12 @@ import type {
   HasQuantile,
   HasVariance,
 } from './distribution.js';
+import type { OneOf } from './oneOf.js';
 import { aboveZero, finite } from './parameters.js';
 import { scalarFamily } from './scalarFamily.js';
 
 /** Parameters of {@link logNormal}: location and scale of the logarithm. */
-export type LogNormalOptions = { readonly location: ParameterValue } & (
-  | { readonly scale: ParameterValue }
-  | { readonly logScale: ParameterValue }
-);
+export type LogNormalOptions = { readonly location: ParameterValue } & OneOf<'scale' | 'logScale'>;
 
 /** An array of log-normal distributions. */
 export interface LogNormal

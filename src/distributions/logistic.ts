@@ -13,14 +13,12 @@ import type {
   HasQuantile,
   HasVariance,
 } from './distribution.js';
+import type { OneOf } from './oneOf.js';
 import { aboveZero, finite } from './parameters.js';
 import { scalarFamily } from './scalarFamily.js';
 
 /** Parameters of {@link logistic}. */
-export type LogisticOptions = { readonly location: ParameterValue } & (
-  | { readonly scale: ParameterValue }
-  | { readonly logScale: ParameterValue }
-);
+export type LogisticOptions = { readonly location: ParameterValue } & OneOf<'scale' | 'logScale'>;
 
 /** An array of logistic distributions. */
 export interface Logistic

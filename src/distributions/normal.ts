@@ -14,17 +14,14 @@ import type {
   HasQuantile,
   HasVariance,
 } from './distribution.js';
+import type { OneOf } from './oneOf.js';
 import { aboveZero, finite } from './parameters.js';
 import { scalarFamily } from './scalarFamily.js';
 
 /** Parameters of {@link normal}: a mean and exactly one measure of spread. */
-export type NormalOptions = { readonly mean: ParameterValue } & (
-  | { readonly sd: ParameterValue }
-  | { readonly logSd: ParameterValue }
-  | { readonly variance: ParameterValue }
-  | { readonly logVariance: ParameterValue }
-  | { readonly precision: ParameterValue }
-);
+export type NormalOptions = { readonly mean: ParameterValue } & OneOf<
+  'sd' | 'logSd' | 'variance' | 'logVariance' | 'precision'
+>;
 
 /** An array of normal distributions. */
 export interface Normal

@@ -1,19 +1,16 @@
 import * as tf from '@tensorflow/tfjs';
 import { poissonDraws } from '../random/noise.js';
 import { count } from '../support/support.js';
-import type { ParameterValue } from '../tensor/checks.js';
 import { choose, composedLogGamma } from '../tensor/composedMath.js';
 import { kernel } from '../tensor/formula.js';
 import { exponentiated } from '../tensor/transforms.js';
 import type { Distribution, HasMean, HasMode, HasVariance } from './distribution.js';
+import type { OneOf } from './oneOf.js';
 import { aboveZero, finite } from './parameters.js';
 import { scalarFamily } from './scalarFamily.js';
 
 /** Parameters of {@link poisson}: exactly one. */
-export type PoissonOptions =
-  | { readonly rate: ParameterValue }
-  | { readonly logRate: ParameterValue }
-  | { readonly mean: ParameterValue };
+export type PoissonOptions = OneOf<'rate' | 'logRate' | 'mean'>;
 
 /** An array of Poisson distributions. */
 export interface Poisson extends Distribution<'poisson', 'none'>, HasMean, HasVariance, HasMode {
