@@ -16,7 +16,7 @@ const { FORCE_COLOR: _, ...environment } = process.env;
 const env = process.stdout.isTTY ? process.env : { ...environment, NO_COLOR: '1' };
 
 /** A step that hangs has to fail, not to hang the command; the whole of it is meant to take under ten minutes. */
-const stepTimeout = 15 * 60 * 1000;
+const stepTimeout = 30 * 60 * 1000;
 
 function tool(packageName, command = packageName) {
   const folder = join(root, 'node_modules', packageName);
@@ -51,6 +51,26 @@ const steps = [
   },
 ];
 
+const windows = process.platform === 'win32';
+
+/** Ends a step together with the processes that it started: a worker left behind would go on computing. */
+function end(child) {
+  if (child.exitCode !== null || child.signalCode !== null || child.pid === undefined) return;
+  if (windows) child.kill('SIGKILL');
+  else process.kill(-child.pid, 'SIGKILL');
+}
+
+let running;
+for (const [signal, code] of [
+  ['SIGINT', 130],
+  ['SIGTERM', 143],
+]) {
+  process.on(signal, () => {
+    if (running) end(running);
+    process.exit(code);
+  });
+}
+
 function run([file, ...parameters]) {
   return new Promise((resolve) => {
     const output = [];
@@ -58,14 +78,16 @@ function run([file, ...parameters]) {
       cwd: root,
       env,
       stdio: ['ignore', 'pipe', 'pipe'],
-      timeout: stepTimeout,
-      killSignal: 'SIGKILL',
-      shell: process.platform === 'win32' && file === 'npm',
+      detached: !windows,
+      shell: windows && file === 'npm',
     });
+    running = child;
+    const timer = setTimeout(end, stepTimeout, child);
     child.stdout.on('data', (chunk) => output.push(chunk));
     child.stderr.on('data', (chunk) => output.push(chunk));
-    child.on('error', (error) => resolve({ passed: false, output: String(error) }));
+    child.on('error', (error) => output.push(Buffer.from(String(error))));
     child.on('close', (code, signal) => {
+      clearTimeout(timer);
       const ending = signal ? `\nended by ${signal}` : '';
       resolve({ passed: code === 0, output: Buffer.concat(output).toString() + ending });
     });
