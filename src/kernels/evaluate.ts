@@ -1,5 +1,6 @@
 import { broadcastStrides, forEachBroadcast, mergeAxes, sizeOf } from './layout.js';
-import { type KernelModule, kernelModule } from './loader.js';
+import { kernelModule } from './loader.js';
+import { placeOperands, placeUpstream } from './placement.js';
 
 /** One argument of a formula: numbers, their shape, and the compiled transform they pass through first. */
 export interface ArrayOperand {
@@ -9,18 +10,28 @@ export interface ArrayOperand {
   readonly transform: number;
 }
 
+/** An upstream gradient. */
+export interface Upstream {
+  readonly data: Float32Array;
+  readonly strides: readonly number[];
+  /** Upstream gradients of one owner hold the same numbers; without one they share nothing. */
+  readonly owner?: object;
+}
+
 /** What to evaluate, over which shape, into which shape. */
 export interface Evaluation {
   /** Table index of the formula or of one of its partial derivatives. */
   readonly formula: number;
   readonly operands: readonly ArrayOperand[];
+  /** Evaluations of one owner have the same numbers in their operands; without one they share nothing. */
+  readonly owner?: object;
   /** The shape that the operands broadcast to. */
   readonly shape: readonly number[];
   /** The result's strides over `shape`; 0 on every axis that is summed. */
   readonly outStrides: readonly number[];
   readonly outSize: number;
   /** A factor for each element, as in a backward pass; its strides run over `shape`. */
-  readonly upstream?: { readonly data: Float32Array; readonly strides: readonly number[] };
+  readonly upstream?: Upstream;
   /** The derivative of an operand's transform, multiplied in: its table index and the operand's position. */
   readonly chain?: { readonly derivative: number; readonly operand: number };
 }
@@ -28,7 +39,10 @@ export interface Evaluation {
 const descriptorWords = 12;
 const operandWords = 4;
 
-/** Runs one formula over arrays in the compiled module: double precision inside, one rounding at the end. */
+/**
+ * Runs one formula over arrays in the compiled module: double precision inside, one rounding at the end. The
+ * result lies in the module's memory, to be read before anything else is evaluated.
+ */
 export function evaluateCompiled(evaluation: Evaluation): Float32Array<ArrayBuffer> {
   const { operands, shape, outSize, upstream, chain } = evaluation;
   if (sizeOf(shape) === 0) return new Float32Array(outSize);
@@ -46,18 +60,17 @@ export function evaluateCompiled(evaluation: Evaluation): Float32Array<ArrayBuff
   const outBytes = summed ? 8 : 4;
 
   const module = kernelModule();
-  module.begin();
+  const pointers = placeOperands(
+    module,
+    evaluation.owner ?? {},
+    operands.map((o) => o.data),
+  );
+  const upstreamPointer = upstream ? placeUpstream(module, upstream.owner ?? {}, upstream.data) : 0;
   const descriptor = module.reserve(4 * (descriptorWords + operandWords * operands.length));
-  const pointers = operands.map((o) => module.reserve(4 * o.data.length));
-  const upstreamPointer = upstream ? module.reserve(4 * upstream.data.length) : 0;
   const sums = module.reserve(outBytes * outSize);
   const rounded = summed ? module.reserve(4 * outSize) : sums;
 
   const floats = module.floats;
-  operands.forEach((o, k) => {
-    floats.set(o.data, pointers[k]! >> 2);
-  });
-  if (upstream) floats.set(upstream.data, upstreamPointer >> 2);
   if (summed) floats.fill(0, sums >> 2, (sums + 8 * outSize) >> 2);
 
   const d = descriptor >> 2;
@@ -78,19 +91,16 @@ export function evaluateCompiled(evaluation: Evaluation): Float32Array<ArrayBuff
     words[at + 2] = operandLoops[k]![depth - 1]!;
     words[at + 3] = o.transform;
   });
+  const run = module.call.run!;
   forEachBroadcast(loops.sizes.slice(0, depth - 2), loops.strides, (_index, offsets) => {
     words[d + 5] = sums + outBytes * offsets[0]!;
     words[d + 7] = upstream ? upstreamPointer + 4 * offsets[1]! : 0;
-    pointers.forEach((pointer, k) => {
-      words[d + descriptorWords + operandWords * k] = pointer + 4 * offsets[k + 2]!;
-    });
-    module.call.run!(descriptor);
+    for (let k = 0; k < pointers.length; k++) {
+      words[d + descriptorWords + operandWords * k] = pointers[k]! + 4 * offsets[k + 2]!;
+    }
+    run(descriptor);
   });
 
   if (summed) module.call.round!(outSize, rounded, sums);
-  return copyOut(module, rounded, outSize);
-}
-
-function copyOut(module: KernelModule, pointer: number, size: number): Float32Array<ArrayBuffer> {
-  return module.floats.slice(pointer >> 2, (pointer >> 2) + size) as Float32Array<ArrayBuffer>;
+  return floats.subarray(rounded >> 2, (rounded >> 2) + outSize) as Float32Array<ArrayBuffer>;
 }

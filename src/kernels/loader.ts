@@ -24,6 +24,7 @@ export class KernelModule {
   #words: Int32Array;
   readonly #base: number;
   #next: number;
+  #layout = 0;
 
   constructor(exports: Exports) {
     this.call = exports;
@@ -35,6 +36,22 @@ export class KernelModule {
 
   begin(): void {
     this.#next = this.#base;
+    this.#layout++;
+  }
+
+  /** Counts the calls of `begin`: what was reserved under another number is gone. */
+  get layout(): number {
+    return this.#layout;
+  }
+
+  /** Where the next piece starts. */
+  get end(): number {
+    return this.#next;
+  }
+
+  /** Gives back everything that was reserved from `end` on. */
+  rewind(end: number): void {
+    this.#next = end;
   }
 
   reserve(bytes: number): number {

@@ -1,8 +1,9 @@
 import * as tf from '@tensorflow/tfjs';
 import { GradientError } from '../errors.js';
-import { type ArrayOperand, evaluateCompiled } from '../kernels/evaluate.js';
+import { type ArrayOperand, evaluateCompiled, type Upstream } from '../kernels/evaluate.js';
 import { broadcastShapes, broadcastStrides, sizeOf } from '../kernels/layout.js';
 import { usesComposedForm } from './composed.js';
+import { copiesOnWrite } from './engine.js';
 import { evaluateScalar } from './evaluateScalar.js';
 import type { Formula } from './formula.js';
 import { runHostOperation } from './hostOperation.js';
@@ -66,24 +67,26 @@ function applyKernel(
   // The numbers of every operand: tracked ones as the operation hands them over, the others from here.
   const gather = (data: readonly Float32Array[]): Float32Array[] =>
     operands.map((o, k) => (tracked.includes(k) ? data[tracked.indexOf(k)]! : operandData(o)));
+  const owner = {};
 
   return runHostOperation({
     where,
     inputs: tracked.map((k) => operands[k]!.source as tf.Tensor),
     outShape,
     forward: (data) => {
-      const pass: Pass = { operands: gather(data), shape, outStrides, outSize: sizeOf(outShape) };
+      const pass: Pass = { owner, operands: gather(data), shape, outStrides, outSize: sizeOf(outShape) };
       return evaluate(formula, operands, pass, -1);
     },
-    gradient: (at, data, upstream) => {
+    gradient: (at, data, upstream, backward) => {
       const k = tracked[at]!;
       requirePartial(where, formula, k);
       const pass: Pass = {
+        owner,
         operands: gather(data),
         shape,
         outStrides: broadcastStrides(operands[k]!.shape, shape),
         outSize: sizeOf(operands[k]!.shape),
-        upstream: { data: upstream, strides: outStrides },
+        upstream: { data: upstream, strides: outStrides, owner: backward },
       };
       return evaluate(formula, operands, pass, k);
     },
@@ -91,18 +94,19 @@ function applyKernel(
 }
 
 interface Pass {
+  readonly owner: object;
   readonly operands: readonly Float32Array[];
   readonly shape: readonly number[];
   readonly outStrides: readonly number[];
   readonly outSize: number;
-  readonly upstream?: { readonly data: Float32Array; readonly strides: readonly number[] };
+  readonly upstream?: Upstream;
 }
 
 /** One pass over the data: the value (`partial` −1), or the gradient of operand `partial`. */
 function evaluate(formula: Formula, operands: readonly Operand[], pass: Pass, partial: number): Float32Array {
   const compiled = formula.compiled;
   if (!compiled || operands.some((o) => o.transform && !o.transform.compiled)) {
-    return evaluateScalar(formula, operands, pass, partial);
+    return evaluateScalar(formula, operands, keptPass(pass), partial);
   }
   const arrays: ArrayOperand[] = operands.map((o, k) => ({
     data: pass.operands[k]!,
@@ -110,7 +114,8 @@ function evaluate(formula: Formula, operands: readonly Operand[], pass: Pass, pa
     transform: o.transform?.compiled?.index ?? -1,
   }));
   const own = partial < 0 ? undefined : operands[partial]!.transform?.compiled;
-  return evaluateCompiled({
+  const result = evaluateCompiled({
+    owner: pass.owner,
     formula: partial < 0 ? compiled.index : compiled.partials[partial]!,
     operands: arrays,
     shape: pass.shape,
@@ -119,6 +124,17 @@ function evaluate(formula: Formula, operands: readonly Operand[], pass: Pass, pa
     ...(pass.upstream ? { upstream: pass.upstream } : {}),
     ...(own ? { chain: { derivative: own.derivative, operand: partial } } : {}),
   });
+  return copiesOnWrite() ? result : result.slice();
+}
+
+/** Copies what a pass borrows: a formula given as a plain function may do anything, tensor operations included. */
+function keptPass(pass: Pass): Pass {
+  const { operands, upstream } = pass;
+  return {
+    ...pass,
+    operands: operands.map((data) => data.slice()),
+    ...(upstream ? { upstream: { ...upstream, data: upstream.data.slice() } } : {}),
+  };
 }
 
 function requirePartial(where: string, formula: Formula, k: number): void {

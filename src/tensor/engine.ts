@@ -39,7 +39,43 @@ export function tensorOf(values: Float32Array | Int32Array, shape: readonly numb
   return tf.engine().makeTensor(values, [...shape], dtype);
 }
 
-/** The numbers of a tensor as float32, whatever its type. */
+/**
+ * Whether a tensor made now copies its values at once, so that it may be made over memory which is about to
+ * be overwritten.
+ */
+export function copiesOnWrite(): boolean {
+  return tf.getBackend() === 'wasm';
+}
+
+/** The parts of the wasm backend that lead to a tensor's numbers in its memory. */
+interface HeapBackend {
+  readonly wasm?: { readonly HEAPU8?: Uint8Array };
+  readonly dataIdMap?: { get(dataId: object): { readonly memoryOffset?: number | null } | undefined };
+}
+
+interface EngineState {
+  readonly state?: {
+    readonly tensorInfo?: { get(dataId: object): { readonly backend?: unknown } | undefined };
+  };
+}
+
+/**
+ * The numbers of a tensor as float32, without a copy where the backend lets one look at its memory. To be
+ * read at once: any tensor operation may free, move or overwrite them.
+ */
+export function borrowedFloats(tensor: tf.Tensor): Float32Array {
+  if (tensor.dtype === 'float32' && !tensor.isDisposed) {
+    // A backend of another make has no such parts, and the public way below serves it.
+    const engine = tf.engine() as unknown as EngineState;
+    const backend = engine.state?.tensorInfo?.get(tensor.dataId)?.backend as HeapBackend | undefined;
+    const heap = backend?.wasm?.HEAPU8;
+    const offset = backend?.dataIdMap?.get(tensor.dataId)?.memoryOffset;
+    if (heap && typeof offset === 'number') return new Float32Array(heap.buffer, offset, tensor.size);
+  }
+  return floatsOf(tensor);
+}
+
+/** The numbers of a tensor as float32, whatever its type, to keep but not to change. */
 export function floatsOf(tensor: tf.Tensor): Float32Array {
   const data = tensor.dataSync();
   return data instanceof Float32Array ? data : Float32Array.from(data);

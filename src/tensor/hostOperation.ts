@@ -1,16 +1,22 @@
 import type * as tf from '@tensorflow/tfjs';
 import { GradientError } from '../errors.js';
-import { floatsOf, runOnTape, tensorOf } from './engine.js';
+import { borrowedFloats, runOnTape, tensorOf } from './engine.js';
 
-/** An operation computed on the host from the numbers of its inputs, with one gradient per input. */
+/**
+ * An operation computed on the host from the numbers of its inputs, with one gradient per input. The numbers
+ * are borrowed: neither function may keep them, or run a tensor operation before it has read them.
+ */
 export interface HostOperation {
   /** Names the caller in errors. */
   readonly where: string;
   readonly inputs: readonly tf.Tensor[];
   readonly outShape: readonly number[];
   forward(data: readonly Float32Array[]): Float32Array;
-  /** The gradient of input `k`, of its shape, given the upstream gradient. */
-  gradient(k: number, data: readonly Float32Array[], upstream: Float32Array): Float32Array;
+  /**
+   * The gradient of input `k`, of its shape, given the upstream gradient. `pass` is one object for all
+   * gradients that are asked for in one backward pass, with one upstream gradient.
+   */
+  gradient(k: number, data: readonly Float32Array[], upstream: Float32Array, pass: object): Float32Array;
 }
 
 /**
@@ -21,19 +27,21 @@ export function runHostOperation(operation: HostOperation): tf.Tensor {
   const { where, inputs, outShape } = operation;
   return runOnTape({
     inputs: keyed(inputs),
-    forward: () => tensorOf(operation.forward(inputs.map(floatsOf)), outShape),
-    backward: (dy, saved) =>
-      Object.fromEntries(
-        inputs.map((input, k) => [
-          String(k),
-          () =>
-            runOnTape({
-              inputs: { ...keyed(saved), dy },
-              forward: () => tensorOf(operation.gradient(k, saved.map(floatsOf), floatsOf(dy)), input.shape),
-              backward: () => refuseSecondDerivative(where, [...Object.keys(saved), 'dy']),
-            }),
-        ]),
-      ),
+    forward: () => tensorOf(operation.forward(inputs.map(borrowedFloats)), outShape),
+    backward: (dy, saved) => {
+      const pass = {};
+      const gradient = (k: number) => () =>
+        runOnTape({
+          inputs: { ...keyed(saved), dy },
+          forward: () =>
+            tensorOf(
+              operation.gradient(k, saved.map(borrowedFloats), borrowedFloats(dy), pass),
+              inputs[k]!.shape,
+            ),
+          backward: () => refuseSecondDerivative(where, [...Object.keys(saved), 'dy']),
+        });
+      return Object.fromEntries(inputs.map((_, k) => [String(k), gradient(k)]));
+    },
   });
 }
 

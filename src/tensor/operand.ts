@@ -2,7 +2,7 @@ import * as tf from '@tensorflow/tfjs';
 import { ParameterError } from '../errors.js';
 import { describe, flatten, type ParameterValue, requireTensor } from './checks.js';
 import { detach } from './detach.js';
-import { floatsOf, tensorOf } from './engine.js';
+import { borrowedFloats, tensorOf } from './engine.js';
 import type { Transform } from './formula.js';
 
 /**
@@ -47,9 +47,9 @@ export function operandFrom(
   return { shape: value.shape, source: value, transform, constant: false };
 }
 
-/** The operand's numbers before its transform. */
+/** The operand's numbers before its transform, to be read at once: see {@link borrowedFloats}. */
 export function operandData(operand: Operand): Float32Array {
-  return operand.source instanceof Float32Array ? operand.source : floatsOf(operand.source);
+  return operand.source instanceof Float32Array ? operand.source : borrowedFloats(operand.source);
 }
 
 /** The same operand with its gradient cut. */
