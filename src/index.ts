@@ -92,7 +92,7 @@ export {
   softplusInverse,
 } from './tensor/special.js';
 export { type BackendOptions, useFastestBackend } from './tensor/useFastestBackend.js';
-export type { BatchData, Tensors } from './training/batchData.js';
+export type { BatchData, BatchEntry, DataFor, NumberArray, Tensors } from './training/batchData.js';
 export { checkpoint, resume } from './training/checkpoint.js';
 export {
   type CheckpointContents,
@@ -105,7 +105,7 @@ export type { StoppingState } from './training/earlyStopping.js';
 export { type EvaluatedBound, type EvaluateOptions, evaluateBound } from './training/evaluateBound.js';
 export type { Json } from './training/json.js';
 export { type Batch, type BatchCursor, type MinibatchOptions, minibatches } from './training/minibatches.js';
-export { type Snapshot, snapshot } from './training/snapshot.js';
+export { Snapshot, snapshot } from './training/snapshot.js';
 export { train } from './training/train.js';
 export type { Parts, Trainable } from './training/trainable.js';
 export type { HeldOutOptions, Progress, TrainingCursor, TrainOptions } from './training/trainOptions.js';

@@ -24,6 +24,14 @@ export type ModelData<Names extends string> = { readonly [K in Names]: DataValue
  * that may depend on the values before it. Immutable; each method returns a longer model.
  *
  * `Given` are the names of the given values, `Latent` and `Observed` map names to distribution types.
+ *
+ * @example
+ * ```ts
+ * import { directed, normal, product } from 'leadline';
+ * const model = directed().latent('z', () => product(normal({ mean: [0, 0], sd: 1 })));
+ * console.log(model.nodes.map((node) => `${node.kind} ${node.name}`));
+ * // [ 'latent z' ]
+ * ```
  */
 export class DirectedModel<
   Given extends string = never,

@@ -5,6 +5,15 @@ import { findVariables, type VariableSource } from './variables.js';
 /**
  * A copy of variables that can be taken anew and put back. Being a `VariableSource` itself, it can be written
  * into a checkpoint beside the variables it copies.
+ *
+ * @example
+ * ```ts
+ * import * as tf from '@tensorflow/tfjs';
+ * import { type Snapshot, snapshot } from 'leadline';
+ * const copy: Snapshot = snapshot({ weight: tf.variable(tf.scalar(1)) });
+ * console.log(copy.step, copy.variables.length);
+ * // 0 2
+ * ```
  */
 export class Snapshot {
   /** The step of the copy, then the copies: what a checkpoint keeps. */

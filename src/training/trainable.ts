@@ -11,6 +11,7 @@ export interface Parts<Term> {
 
 /** What training needs of a bound: any object with such an `estimate` can be trained. */
 export interface Trainable<Data> {
+  /** The bound and its surrogate from one set of draws. */
   estimate(
     data: Data,
     stream: Stream,
