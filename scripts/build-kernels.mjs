@@ -29,7 +29,8 @@ function exportedFunctions(path) {
     .filter((f) => f.modifiers?.some((m) => m.kind === ts.SyntaxKind.ExportKeyword))
     .map((f) => ({
       name: f.name.text,
-      parameters: f.parameters.map((p) => p.name.text),
+      // A leading underscore only says that the formula does not read the parameter.
+      parameters: f.parameters.map((p) => p.name.text.replace(/^_/, '')),
       kernel: ts.getJSDocTags(f).some((tag) => tag.tagName.text === 'kernel'),
     }));
 }
@@ -39,7 +40,9 @@ for (const path of filesBelow(numeric).sort()) {
   const functions = new Map(exportedFunctions(path).map((f) => [f.name, f]));
   for (const f of functions.values()) {
     if (!f.kernel) continue;
-    const partials = f.parameters.map((p) => (functions.has(`${f.name}_${p}`) ? `${f.name}_${p}` : undefined));
+    const partials = f.parameters.map((p) =>
+      functions.has(`${f.name}_${p}`) ? `${f.name}_${p}` : undefined,
+    );
     kernels.push({ ...f, partials, module: relative(root, path).replace(/\.ts$/, '') });
   }
 }
@@ -95,12 +98,16 @@ const outputs = new Map();
 const { error, stderr } = await asc.main(
   [
     'entry.ts',
-    '--outFile', 'module.wasm',
-    '--runtime', 'stub',
+    '--outFile',
+    'module.wasm',
+    '--runtime',
+    'stub',
     '-O3',
     '--noAssert',
-    '--enable', 'simd',
-    '--use', 'abort=',
+    '--enable',
+    'simd',
+    '--use',
+    'abort=',
   ],
   { readFile: readSource, writeFile: (name, data) => outputs.set(name, data), listFiles: () => [] },
 );

@@ -13,7 +13,7 @@ import type {
   HasVariance,
 } from './distribution.js';
 import type { OneOf } from './oneOf.js';
-import { aboveZero, finite } from './parameters.js';
+import { aboveZero, logarithmic, runaway } from './parameters.js';
 import { scalarFamily } from './scalarFamily.js';
 
 /** Parameters of {@link exponential}: exactly one. */
@@ -41,7 +41,7 @@ const make = scalarFamily({
   parameters: {
     rate: {
       rate: { domain: aboveZero, fix },
-      logRate: { domain: finite, transform: exponentiated },
+      logRate: { domain: logarithmic, fix: runaway, transform: exponentiated },
       scale: { domain: aboveZero, transform: reciprocal, fix },
       mean: { domain: aboveZero, transform: reciprocal, fix },
     },

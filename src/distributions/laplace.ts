@@ -13,7 +13,7 @@ import type {
   HasVariance,
 } from './distribution.js';
 import type { OneOf } from './oneOf.js';
-import { aboveZero, finite } from './parameters.js';
+import { aboveZero, finite, logarithmic, runaway } from './parameters.js';
 import { scalarFamily } from './scalarFamily.js';
 
 /** Parameters of {@link laplace}. */
@@ -42,7 +42,7 @@ const make = scalarFamily({
     location: { location: { domain: finite } },
     scale: {
       scale: { domain: aboveZero, fix: 'pass logScale if your network can produce negative values' },
-      logScale: { domain: finite, transform: exponentiated },
+      logScale: { domain: logarithmic, fix: runaway, transform: exponentiated },
     },
   },
   logDensity: kernel('laplaceLogDensity', (x, l, s) =>

@@ -15,7 +15,7 @@ import type {
   HasVariance,
 } from './distribution.js';
 import type { OneOf } from './oneOf.js';
-import { aboveZero, finite } from './parameters.js';
+import { aboveZero, finite, logarithmic, logarithmicSquare, runaway } from './parameters.js';
 import { scalarFamily } from './scalarFamily.js';
 
 /** Parameters of {@link normal}: a mean and exactly one measure of spread. */
@@ -48,9 +48,9 @@ const make = scalarFamily({
     mean: { mean: { domain: finite } },
     sd: {
       sd: { domain: aboveZero, fix },
-      logSd: { domain: finite, transform: exponentiated },
+      logSd: { domain: logarithmic, fix: runaway, transform: exponentiated },
       variance: { domain: aboveZero, transform: squareRoot, fix },
-      logVariance: { domain: finite, transform: expHalf },
+      logVariance: { domain: logarithmicSquare, fix: runaway, transform: expHalf },
       precision: { domain: aboveZero, transform: inverseSquareRoot, fix },
     },
   },

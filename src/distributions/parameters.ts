@@ -26,6 +26,10 @@ export const fromZero: Domain = {
   above: -Number.MIN_VALUE,
   below: Number.POSITIVE_INFINITY,
 };
+/** A logarithm of a scale or rate: its exponential must fit a double, with room for a square root's reciprocal. */
+export const logarithmic: Domain = { words: 'between -700 and 700', above: -700, below: 700 };
+/** A logarithm of a squared scale. */
+export const logarithmicSquare: Domain = { words: 'between -1400 and 1400', above: -1400, below: 1400 };
 /** Strictly between zero and one. */
 export const insideUnit: Domain = { words: 'strictly between 0 and 1', above: 0, below: 1 };
 
@@ -35,6 +39,10 @@ export const unitClosed: Domain = {
   above: -Number.MIN_VALUE,
   below: 1 + Number.EPSILON,
 };
+
+/** What to do about a logarithm that no longer fits. */
+export const runaway =
+  'a network that gives such values has diverged: clip its output, or lower the learning rate';
 
 /** One way to give a parameter: its domain, the transform to the form that formulas read, and the usual cure. */
 export interface Form {

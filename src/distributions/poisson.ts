@@ -3,17 +3,18 @@ import { poissonDraws } from '../random/noise.js';
 import { count } from '../support/support.js';
 import { choose, composedLogGamma } from '../tensor/composedMath.js';
 import { kernel } from '../tensor/formula.js';
+import { noComposedForm } from '../tensor/noComposedForm.js';
 import { exponentiated } from '../tensor/transforms.js';
-import type { Distribution, HasMean, HasMode, HasVariance } from './distribution.js';
+import type { Distribution, HasCdf, HasMean, HasMode, HasVariance } from './distribution.js';
 import type { OneOf } from './oneOf.js';
-import { aboveZero, finite } from './parameters.js';
+import { aboveZero, logarithmic, runaway } from './parameters.js';
 import { scalarFamily } from './scalarFamily.js';
 
 /** Parameters of {@link poisson}: exactly one. */
 export type PoissonOptions = OneOf<'rate' | 'logRate' | 'mean'>;
 
 /** An array of Poisson distributions. */
-export interface Poisson extends Distribution<'poisson', 'none'>, HasMean, HasVariance, HasMode {
+export interface Poisson extends Distribution<'poisson', 'none'>, HasMean, HasVariance, HasMode, HasCdf {
   /** A parameter as the formulas read it, differentiable. */
   parameter(name: 'rate'): tf.Tensor;
 }
@@ -28,7 +29,7 @@ const make = scalarFamily({
   parameters: {
     rate: {
       rate: { domain: aboveZero, fix },
-      logRate: { domain: finite, transform: exponentiated },
+      logRate: { domain: logarithmic, fix: runaway, transform: exponentiated },
       mean: { domain: aboveZero, fix },
     },
   },
@@ -44,6 +45,7 @@ const make = scalarFamily({
     variance: rate,
     mode: kernel('poissonMode', (r) => tf.floor(r!)),
   },
+  functions: { cdf: kernel('poissonCdf', noComposedForm('poisson.cdf')) },
 });
 
 /**
@@ -51,7 +53,8 @@ const make = scalarFamily({
  *
  * Log mass: x log rate − rate − log x! at whole numbers from zero, −∞ elsewhere, in nats, computed by
  * Loader's saddle-point form so that large counts lose nothing. Shapes: the parameter's shape is
- * `arrayShape`; points are scalars, float32. Gradient route: none.
+ * `arrayShape`; points are scalars, float32. Gradient route: none. `cdf` is the upper incomplete gamma function
+ * Q(⌊x⌋ + 1, rate), by its kernel alone: not inside `composed`.
  *
  * @param options - one of `rate`, `logRate`, `mean`; rate and mean are the same
  * @throws ParameterError when no parameter or more than one is given, or a rate is not positive and finite.

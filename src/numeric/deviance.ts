@@ -10,7 +10,7 @@ export function deviance(x: number, m: number): number {
   const d = m - x;
   if (Math.abs(d) <= 0.5 * x) return -x * log1pmx(d / x);
   if (x === Infinity || m === Infinity) return Infinity;
-  return x * Math.log(x / m) + d;
+  return x * logRatio(x, m) + d;
 }
 
 /** log(x / m). */
@@ -27,5 +27,6 @@ export function deviance_m(x: number, m: number): number {
 export function logRatio(x: number, m: number): number {
   const d = x - m;
   if (Math.abs(d) <= 0.5 * m) return Math.log1p(d / m);
-  return Math.log(x / m);
+  const r = x / m;
+  return r > 1.0e-300 && r < 1.0e300 ? Math.log(r) : Math.log(x) - Math.log(m);
 }

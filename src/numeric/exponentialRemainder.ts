@@ -3,7 +3,8 @@
  * Taylor series below 0.5 in magnitude, where twenty terms reach the last place; direct above.
  */
 export function exponentialRemainder(x: number): number {
-  if (Math.abs(x) > 0.5) return Math.expm1(x) - x;
+  if (x === Infinity) return x;
+  if (!(Math.abs(x) <= 0.5)) return Math.expm1(x) - x;
   let term = 0.5 * x * x;
   let sum = 0.0;
   let n = 3.0;

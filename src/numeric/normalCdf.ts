@@ -6,6 +6,11 @@ export function normalDensity(x: number): number {
   return Math.exp(-0.5 * x * x) / SQRT_2PI;
 }
 
+/** x φ(x); zero at the ends, where the product of the two is not a number. */
+export function scaledNormalDensity(x: number): number {
+  return Math.abs(x) > 40.0 ? 0.0 : x * normalDensity(x);
+}
+
 /** Φ(x) = ½ erfc(−x/√2), the standard normal distribution function. @kernel */
 export function normalCdf(x: number): number {
   // The exponent is x² /2 itself: halving the square of −x/√2 would round it once more.

@@ -49,9 +49,10 @@ export function logarithm_v(v: number): number {
   return 1.0 / v;
 }
 
-/** log(v / (1 − v)): a probability to its log odds. @kernel */
+/** log(v / (1 − v)): a probability to its log odds; by log1p near one half, where it crosses zero. @kernel */
 export function logOdds(v: number): number {
-  return Math.log(v / (1.0 - v));
+  const w = 1.0 - v;
+  return v > 0.25 && v < 0.75 ? Math.log1p((v - w) / w) : Math.log(v / w);
 }
 export function logOdds_v(v: number): number {
   return 1.0 / (v * (1.0 - v));

@@ -2,6 +2,7 @@
 // Source: Johnson, Kemp and Kotz, Univariate Discrete Distributions, 3rd edition (2005), section 3.2.
 import { exponentialRemainder } from '../exponentialRemainder.js';
 import { log1pmx } from '../log1pmx.js';
+import { outside } from '../outside.js';
 import { sigmoid } from '../sigmoid.js';
 import { softplus } from '../softplus.js';
 
@@ -9,7 +10,7 @@ import { softplus } from '../softplus.js';
 export function bernoulliLogDensity(x: number, logit: number): number {
   if (x === 1.0) return -softplus(-logit);
   if (x === 0.0) return -softplus(logit);
-  return -Infinity;
+  return outside(x);
 }
 export function bernoulliLogDensity_logit(x: number, logit: number): number {
   if (x === 1.0) return sigmoid(-logit);
@@ -60,7 +61,7 @@ export function bernoulliEntropy_logit(logit: number): number {
 export function bernoulliCdf(x: number, logit: number): number {
   if (x < 0.0) return 0.0;
   if (x < 1.0) return sigmoid(-logit);
-  return 1.0;
+  return x >= 1.0 ? 1.0 : NaN;
 }
 export function bernoulliCdf_logit(x: number, logit: number): number {
   return x >= 0.0 && x < 1.0 ? -sigmoid(logit) * sigmoid(-logit) : 0.0;

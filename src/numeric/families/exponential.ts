@@ -1,10 +1,12 @@
 // The exponential distribution in double precision.
 // Source: Johnson, Kotz and Balakrishnan, Continuous Univariate Distributions 1 (1994), chapter 19.
+import { logRatio } from '../deviance.js';
 import { log1pmx } from '../log1pmx.js';
+import { outside } from '../outside.js';
 
 /** Log density, log rate − rate · x for x ≥ 0, −∞ below. @kernel */
 export function exponentialLogDensity(x: number, rate: number): number {
-  return x >= 0.0 ? Math.log(rate) - rate * x : -Infinity;
+  return x >= 0.0 ? Math.log(rate) - rate * x : outside(x);
 }
 export function exponentialLogDensity_x(x: number, rate: number): number {
   return x >= 0.0 ? -rate : 0.0;
@@ -47,7 +49,7 @@ export function exponentialEntropy_rate(rate: number): number {
 
 /** Distribution function, 1 − exp(−rate · x). @kernel */
 export function exponentialCdf(x: number, rate: number): number {
-  return x > 0.0 ? -Math.expm1(-rate * x) : 0.0;
+  return x <= 0.0 ? 0.0 : -Math.expm1(-rate * x);
 }
 export function exponentialCdf_x(x: number, rate: number): number {
   return x >= 0.0 ? rate * Math.exp(-rate * x) : 0.0;
@@ -70,7 +72,7 @@ export function exponentialQuantile_rate(p: number, rate: number): number {
 /** Divergence, r − 1 − log r with r = otherRate / rate. @kernel */
 export function exponentialKl(rate: number, otherRate: number): number {
   const t = (otherRate - rate) / rate;
-  return t < -0.5 ? t - Math.log(otherRate / rate) : -log1pmx(t);
+  return t < -0.5 ? t - logRatio(otherRate, rate) : -log1pmx(t);
 }
 export function exponentialKl_rate(rate: number, otherRate: number): number {
   return (rate - otherRate) / rate / rate;

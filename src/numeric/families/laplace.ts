@@ -1,5 +1,6 @@
 // The Laplace distribution in double precision, with z = (x − location) / scale.
 // Source: Johnson, Kotz and Balakrishnan, Continuous Univariate Distributions 2 (1995), chapter 24.
+import { logRatio } from '../deviance.js';
 import { exponentialRemainder } from '../exponentialRemainder.js';
 import { log1pmx } from '../log1pmx.js';
 
@@ -52,7 +53,8 @@ export function laplaceCdf_location(x: number, location: number, scale: number):
 }
 export function laplaceCdf_scale(x: number, location: number, scale: number): number {
   const z = (x - location) / scale;
-  return (-0.5 * z * Math.exp(-Math.abs(z))) / scale;
+  // Zero at the ends, where the product of the two is not a number.
+  return Math.abs(z) > 800.0 ? 0.0 : (-0.5 * z * Math.exp(-Math.abs(z))) / scale;
 }
 
 // Quantile of the standard member; its two branches meet at zero.
@@ -74,6 +76,14 @@ export function laplaceQuantile_scale(p: number, _location: number, _scale: numb
   return standardQuantile(p);
 }
 
+// scale / otherScale · (exp(−d) − 1 + d) with d = gap / scale, which may overflow where the ratio underflows.
+function shift(gap: number, scale: number, otherScale: number): number {
+  const d = gap / scale;
+  if (d > 0.5) return (scale * Math.expm1(-d) + gap) / otherScale;
+  const rest = exponentialRemainder(-d);
+  return rest === 0.0 ? 0.0 : (scale / otherScale) * rest;
+}
+
 /**
  * Divergence, with d = |location − otherLocation| / scale and r = scale / otherScale:
  * (r − 1 − log r) + r (exp(−d) − 1 + d). Both parts are sums of positive terms, so nothing cancels.
@@ -85,11 +95,9 @@ export function laplaceKl(
   otherLocation: number,
   otherScale: number,
 ): number {
-  const d = Math.abs(location - otherLocation) / scale;
-  const r = scale / otherScale;
   const t = (scale - otherScale) / otherScale;
-  const spread = t < -0.5 ? t - Math.log(r) : -log1pmx(t);
-  return spread + r * exponentialRemainder(-d);
+  const spread = t < -0.5 ? t - logRatio(scale, otherScale) : -log1pmx(t);
+  return spread + shift(Math.abs(location - otherLocation), scale, otherScale);
 }
 export function laplaceKl_location(
   location: number,
@@ -106,10 +114,10 @@ export function laplaceKl_scale(
   otherLocation: number,
   otherScale: number,
 ): number {
-  // 1/otherScale · (1 − otherScale/scale + exp(−d)(1 + d) − 1)
-  const d = Math.abs(location - otherLocation) / scale;
+  // 1/otherScale · (1 − otherScale/scale + exp(−d)(1 + d) − 1); the tail is −1 long before d overflows.
+  const d = Math.min(Math.abs(location - otherLocation) / scale, 800.0);
   const tail = exponentialRemainder(-d) + d * Math.expm1(-d);
-  return ((scale - otherScale) / scale + tail) / otherScale;
+  return (scale - otherScale) / otherScale / scale + tail / otherScale;
 }
 export function laplaceKl_otherLocation(
   location: number,
@@ -126,6 +134,6 @@ export function laplaceKl_otherScale(
   otherLocation: number,
   otherScale: number,
 ): number {
-  const d = Math.abs(location - otherLocation) / scale;
-  return -((scale - otherScale) / otherScale + (scale / otherScale) * exponentialRemainder(-d)) / otherScale;
+  const gap = Math.abs(location - otherLocation);
+  return -((scale - otherScale) / otherScale + shift(gap, scale, otherScale)) / otherScale;
 }

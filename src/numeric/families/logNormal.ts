@@ -1,29 +1,28 @@
 // The log-normal distribution in double precision: log x is normal with mean `location` and deviation `scale`.
 // Source: Johnson, Kotz and Balakrishnan, Continuous Univariate Distributions 1 (1994), chapter 14.
-import { normalCdf } from '../normalCdf.js';
+import { HALF_LOG_2PI } from '../constants.js';
+import { logDistance } from '../logDistance.js';
+import { normalCdf, normalDensity, scaledNormalDensity } from '../normalCdf.js';
 import { normalQuantile, normalQuantile_x } from '../normalQuantile.js';
-
-const halfLogTwoPi = 0.91893853320467274178;
-const inverseRootTwoPi = 0.39894228040143267794;
+import { outside } from '../outside.js';
 
 /** Log density, −½ z² − log x − log scale − ½ log 2π with z = (log x − location) / scale; −∞ for x ≤ 0. @kernel */
 export function logNormalLogDensity(x: number, location: number, scale: number): number {
-  if (!(x > 0.0) || x === Infinity) return -Infinity;
-  const logX = Math.log(x);
-  const z = (logX - location) / scale;
-  return -0.5 * z * z - logX - Math.log(scale) - halfLogTwoPi;
+  if (!(x > 0.0) || x === Infinity) return outside(x);
+  const z = logDistance(x, location) / scale;
+  return -0.5 * z * z - Math.log(x) - Math.log(scale) - HALF_LOG_2PI;
 }
 export function logNormalLogDensity_x(x: number, location: number, scale: number): number {
   if (!(x > 0.0)) return 0.0;
-  return -((Math.log(x) - location) / scale / scale + 1.0) / x;
+  return -(logDistance(x, location) / scale / scale + 1.0) / x;
 }
 export function logNormalLogDensity_location(x: number, location: number, scale: number): number {
   if (!(x > 0.0)) return 0.0;
-  return (Math.log(x) - location) / scale / scale;
+  return logDistance(x, location) / scale / scale;
 }
 export function logNormalLogDensity_scale(x: number, location: number, scale: number): number {
   if (!(x > 0.0)) return 0.0;
-  const z = (Math.log(x) - location) / scale;
+  const z = logDistance(x, location) / scale;
   return ((z - 1.0) * (z + 1.0)) / scale;
 }
 
@@ -49,17 +48,21 @@ export function logNormalMean_scale(location: number, scale: number): number {
   return scale * Math.exp(location + 0.5 * scale * scale);
 }
 
-/** Variance, (exp(scale²) − 1) exp(2 location + scale²). @kernel */
+/**
+ * Variance, (exp(scale²) − 1) exp(2 location + scale²), with exp(scale²) moved into the second factor: one may
+ * overflow where the other underflows.
+ * @kernel
+ */
 export function logNormalVariance(location: number, scale: number): number {
   const v = scale * scale;
-  return Math.expm1(v) * Math.exp(2.0 * location + v);
+  return -Math.expm1(-v) * Math.exp(2.0 * (location + v));
 }
 export function logNormalVariance_location(location: number, scale: number): number {
   return 2.0 * logNormalVariance(location, scale);
 }
 export function logNormalVariance_scale(location: number, scale: number): number {
   const v = scale * scale;
-  return 2.0 * scale * Math.exp(2.0 * location + v) * (Math.exp(v) + Math.expm1(v));
+  return 2.0 * scale * Math.exp(2.0 * (location + v)) * (1.0 - Math.expm1(-v));
 }
 
 /** Mode, exp(location − scale²). @kernel */
@@ -75,7 +78,7 @@ export function logNormalMode_scale(location: number, scale: number): number {
 
 /** Entropy, location + log scale + ½ log 2πe. @kernel */
 export function logNormalEntropy(location: number, scale: number): number {
-  return location + Math.log(scale) + halfLogTwoPi + 0.5;
+  return location + Math.log(scale) + HALF_LOG_2PI + 0.5;
 }
 export function logNormalEntropy_location(_location: number, _scale: number): number {
   return 1.0;
@@ -84,27 +87,22 @@ export function logNormalEntropy_scale(_location: number, scale: number): number
   return 1.0 / scale;
 }
 
-function density(z: number): number {
-  return inverseRootTwoPi * Math.exp(-0.5 * z * z);
-}
-
 /** Distribution function, Φ((log x − location) / scale). @kernel */
 export function logNormalCdfOf(x: number, location: number, scale: number): number {
-  if (!(x > 0.0)) return 0.0;
-  return normalCdf((Math.log(x) - location) / scale);
+  if (x <= 0.0) return 0.0;
+  return normalCdf(logDistance(x, location) / scale);
 }
 export function logNormalCdfOf_x(x: number, location: number, scale: number): number {
   if (!(x > 0.0)) return 0.0;
-  return density((Math.log(x) - location) / scale) / (scale * x);
+  return normalDensity(logDistance(x, location) / scale) / scale / x;
 }
 export function logNormalCdfOf_location(x: number, location: number, scale: number): number {
   if (!(x > 0.0)) return 0.0;
-  return -density((Math.log(x) - location) / scale) / scale;
+  return -normalDensity(logDistance(x, location) / scale) / scale;
 }
 export function logNormalCdfOf_scale(x: number, location: number, scale: number): number {
   if (!(x > 0.0)) return 0.0;
-  const z = (Math.log(x) - location) / scale;
-  return (-z * density(z)) / scale;
+  return -scaledNormalDensity(logDistance(x, location) / scale) / scale;
 }
 
 /** Quantile, exp(location + scale · Φ⁻¹(p)). @kernel */

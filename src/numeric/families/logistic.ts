@@ -1,5 +1,7 @@
 // The logistic distribution in double precision, with z = (x − location) / scale.
 // Source: Johnson, Kotz and Balakrishnan, Continuous Univariate Distributions 2 (1995), chapter 23.
+import { sigmoid, sigmoid_x } from '../sigmoid.js';
+import { logOdds } from '../transforms.js';
 
 const piSquaredThird = 3.28986813369645287294;
 
@@ -35,41 +37,25 @@ export function logisticEntropy_scale(scale: number): number {
   return 1.0 / scale;
 }
 
-function standardCdf(z: number): number {
-  if (z >= 0.0) return 1.0 / (1.0 + Math.exp(-z));
-  const e = Math.exp(z);
-  return e / (1.0 + e);
-}
-
-function standardDensity(z: number): number {
-  const e = Math.exp(-Math.abs(z));
-  return e / ((1.0 + e) * (1.0 + e));
-}
-
 /** Distribution function, 1 / (1 + exp(−z)). @kernel */
 export function logisticCdf(x: number, location: number, scale: number): number {
-  return standardCdf((x - location) / scale);
+  return sigmoid((x - location) / scale);
 }
 export function logisticCdf_x(x: number, location: number, scale: number): number {
-  return standardDensity((x - location) / scale) / scale;
+  return sigmoid_x((x - location) / scale) / scale;
 }
 export function logisticCdf_location(x: number, location: number, scale: number): number {
-  return -standardDensity((x - location) / scale) / scale;
+  return -sigmoid_x((x - location) / scale) / scale;
 }
 export function logisticCdf_scale(x: number, location: number, scale: number): number {
   const z = (x - location) / scale;
-  return (-z * standardDensity(z)) / scale;
-}
-
-// Log odds of p; near one half the ratio is near 1, where log1p keeps the accuracy.
-function standardQuantile(p: number): number {
-  const q = 1.0 - p;
-  return p > 0.25 && p < 0.75 ? Math.log1p((p - q) / q) : Math.log(p) - Math.log(q);
+  // Zero at the ends, where the product of the two is not a number.
+  return Math.abs(z) > 800.0 ? 0.0 : (-z * sigmoid_x(z)) / scale;
 }
 
 /** Quantile, location + scale · log(p / (1 − p)). @kernel */
 export function logisticQuantile(p: number, location: number, scale: number): number {
-  return location + scale * standardQuantile(p);
+  return location + scale * logOdds(p);
 }
 export function logisticQuantile_p(p: number, _location: number, scale: number): number {
   return scale / (p * (1.0 - p));
@@ -78,5 +64,5 @@ export function logisticQuantile_location(_p: number, _location: number, _scale:
   return 1.0;
 }
 export function logisticQuantile_scale(p: number, _location: number, _scale: number): number {
-  return standardQuantile(p);
+  return logOdds(p);
 }

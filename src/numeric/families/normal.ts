@@ -1,16 +1,15 @@
 // The normal distribution in double precision, with z = (x − mean) / sd.
 // Source: Johnson, Kotz and Balakrishnan, Continuous Univariate Distributions 1 (1994), chapter 13.
+import { HALF_LOG_2PI } from '../constants.js';
+import { logRatio } from '../deviance.js';
 import { log1pmx } from '../log1pmx.js';
-import { normalCdf } from '../normalCdf.js';
+import { normalCdf, normalDensity, scaledNormalDensity } from '../normalCdf.js';
 import { normalQuantile, normalQuantile_x } from '../normalQuantile.js';
-
-const halfLogTwoPi = 0.91893853320467274178;
-const inverseRootTwoPi = 0.39894228040143267794;
 
 /** Log density, −½ z² − log sd − ½ log 2π. @kernel */
 export function normalLogDensity(x: number, mean: number, sd: number): number {
   const z = (x - mean) / sd;
-  return -0.5 * z * z - Math.log(sd) - halfLogTwoPi;
+  return -0.5 * z * z - Math.log(sd) - HALF_LOG_2PI;
 }
 export function normalLogDensity_x(x: number, mean: number, sd: number): number {
   return -((x - mean) / sd) / sd;
@@ -44,14 +43,10 @@ export function normalVariance_sd(sd: number): number {
 
 /** Entropy, log sd + ½ log 2πe. @kernel */
 export function normalEntropy(sd: number): number {
-  return Math.log(sd) + halfLogTwoPi + 0.5;
+  return Math.log(sd) + HALF_LOG_2PI + 0.5;
 }
 export function normalEntropy_sd(sd: number): number {
   return 1.0 / sd;
-}
-
-function density(z: number): number {
-  return inverseRootTwoPi * Math.exp(-0.5 * z * z);
 }
 
 /** Distribution function, Φ(z). @kernel */
@@ -59,14 +54,13 @@ export function normalCdfOf(x: number, mean: number, sd: number): number {
   return normalCdf((x - mean) / sd);
 }
 export function normalCdfOf_x(x: number, mean: number, sd: number): number {
-  return density((x - mean) / sd) / sd;
+  return normalDensity((x - mean) / sd) / sd;
 }
 export function normalCdfOf_mean(x: number, mean: number, sd: number): number {
-  return -density((x - mean) / sd) / sd;
+  return -normalDensity((x - mean) / sd) / sd;
 }
 export function normalCdfOf_sd(x: number, mean: number, sd: number): number {
-  const z = (x - mean) / sd;
-  return (-z * density(z)) / sd;
+  return -scaledNormalDensity((x - mean) / sd) / sd;
 }
 
 /** Quantile, mean + sd · Φ⁻¹(p). @kernel */
@@ -93,7 +87,7 @@ export function normalKl(mean: number, sd: number, otherMean: number, otherSd: n
   const t = (sd - otherSd) / otherSd;
   const e = t * (2.0 + t);
   // Far below one, e is −1 to rounding and its logarithm must come from the ratio itself.
-  const spread = e < -0.5 ? e - 2.0 * Math.log(sd / otherSd) : -log1pmx(e);
+  const spread = e < -0.5 ? e - 2.0 * logRatio(sd, otherSd) : -log1pmx(e);
   return 0.5 * spread + 0.5 * d * d;
 }
 export function normalKl_mean(mean: number, _sd: number, otherMean: number, otherSd: number): number {

@@ -1,9 +1,20 @@
 // The uniform distribution between `lower` and `upper` in double precision.
 // Source: Johnson, Kotz and Balakrishnan, Continuous Univariate Distributions 2 (1995), chapter 26.
+import { lostBits } from '../logDistance.js';
+import { outside } from '../outside.js';
+
+/**
+ * log(upper − lower), with the rounding of the difference put back: it decides the value where the width is
+ * next to one.
+ */
+function logWidth(lower: number, upper: number): number {
+  const width = upper - lower;
+  return Math.log(width) + lostBits(upper, -lower, width) / width;
+}
 
 /** Log density, −log(upper − lower) inside the closed interval, −∞ outside. @kernel */
 export function uniformLogDensity(x: number, lower: number, upper: number): number {
-  return x >= lower && x <= upper ? -Math.log(upper - lower) : -Infinity;
+  return x >= lower && x <= upper ? -logWidth(lower, upper) : outside(x);
 }
 export function uniformLogDensity_x(_x: number, _lower: number, _upper: number): number {
   return 0.0;
@@ -53,7 +64,7 @@ export function uniformVariance_upper(lower: number, upper: number): number {
 
 /** Entropy, log(upper − lower). @kernel */
 export function uniformEntropy(lower: number, upper: number): number {
-  return Math.log(upper - lower);
+  return logWidth(lower, upper);
 }
 export function uniformEntropy_lower(lower: number, upper: number): number {
   return -1.0 / (upper - lower);

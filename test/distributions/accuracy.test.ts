@@ -1,0 +1,106 @@
+import * as tf from '@tensorflow/tfjs';
+import { afterAll, describe, expect, it } from 'vitest';
+import { formulas } from '../../src/kernels/generated/formulas.js';
+import { overflow, score, ulp32 } from '../numeric/ulp.js';
+import { families, publicFunction, type Reference, references, titleOf } from './families.js';
+
+// Half a unit is the rounding to float32, a hundredth what the double inside may add. Where a sum crosses zero,
+// 2^-50 of the sizes of its terms is allowed, divergences excepted. Behind a change of parametrization, so is what
+// one rounding of the double parameter does: 2^-52 of it.
+const bar = 0.51;
+const share = 0.01;
+const crossing = 2 ** -50;
+const rounding = 2 ** -52;
+const nudge = 2 ** -30;
+
+type Scalar = (...values: number[]) => number;
+type Kernels = Record<string, { value: Scalar; partials: readonly (Scalar | undefined)[] }>;
+const kernels = formulas as unknown as Kernels;
+
+interface Worst {
+  error: number;
+  text: string;
+}
+
+/** The worst error in float32 units beyond what a zero crossing allows. */
+function worst(reference: Reference, which: number, got: ArrayLike<number>, effects: Float64Array): Worst {
+  let result: Worst = { error: 0, text: '' };
+  const exact = reference.exact[which]!;
+  const strict = reference.function === 'kl';
+  for (let i = 0; i < exact.length; i++) {
+    const size = strict ? 0 : reference.sizes[which]![i]!;
+    if (Math.abs(got[i]! - exact[i]!) <= Math.max(crossing * size, effects[i]!)) continue;
+    // Infinities are as exact as numbers.
+    const error = Object.is(got[i]! + 0, exact[i]! + 0) ? 0 : score(got[i]!, exact[i]!);
+    if (error > result.error) {
+      const args = reference.columns.map((c, k) => `${reference.arguments[k]} ${c[i]}`).join(', ');
+      result = { error, text: `at ${args}: got ${got[i]}, exact ${exact[i]} (${error} units)` };
+    }
+  }
+  return result;
+}
+
+/** A result as the formulas give it in double precision, and what one rounding of a transformed parameter does. */
+function insideDouble(reference: Reference, which: number): { doubles: Float64Array; effects: Float64Array } {
+  const kernel = kernels[reference.kernel]!;
+  const partial = which === 0 ? -1 : reference.arguments.indexOf(reference.partials[which - 1]!);
+  const f = partial < 0 ? kernel.value : kernel.partials[partial]!;
+  const count = reference.exact[0]!.length;
+  const [doubles, effects] = [new Float64Array(count), new Float64Array(count)];
+  for (let i = 0; i < count; i++) {
+    const raw = reference.columns.map((c) => c[i]!);
+    const args = raw.map((v, k) => {
+      const transform = reference.transforms[k];
+      return transform ? kernels[transform]!.value(v) : v;
+    });
+    const transform = partial < 0 ? undefined : reference.transforms[partial];
+    const slope = transform ? kernels[transform]!.partials[0]!(raw[partial]!) : 1;
+    const value = f(...args) * slope;
+    for (const [k, name] of reference.transforms.entries()) {
+      if (!name) continue;
+      const moved = f(...args.map((v, j) => (j === k ? v * (1 + nudge) : v))) * slope;
+      if (Number.isFinite(moved - value)) effects[i]! += (Math.abs(moved - value) / nudge) * rounding;
+    }
+    // The rounding decides whether a value overflows, nothing before it.
+    doubles[i] = Math.abs(value) >= overflow ? Math.sign(value) * Infinity : value;
+  }
+  return { doubles, effects };
+}
+
+describe.each(families)('%s against mpmath', (family) => {
+  const all = references(family);
+  afterAll(() => tf.disposeVariables());
+
+  for (const reference of all) {
+    it(`${titleOf(reference)} and its derivatives`, () => {
+      expect(reference.exact[0]!.length).toBeGreaterThanOrEqual(260);
+      const before = tf.memory().numTensors;
+      tf.tidy(() => {
+        const f = publicFunction(reference);
+        const tensors = reference.columns.map((c) => tf.tensor1d(c));
+        const rounded = [f(...tensors)];
+        for (const name of reference.partials) {
+          const k = reference.arguments.indexOf(name);
+          const along = (t: tf.Tensor): tf.Tensor => f(...tensors.map((other, j) => (j === k ? t : other)));
+          rounded.push(tf.grad(along)(tensors[k]!));
+        }
+        rounded.forEach((got, which) => {
+          const what = which === 0 ? 'value' : `derivative in ${reference.partials[which - 1]}`;
+          const { doubles, effects } = insideDouble(reference, which);
+          const { error, text } = worst(reference, which, got.dataSync(), effects);
+          expect.soft(error, `${what}, rounded, ${text}`).toBeLessThanOrEqual(bar);
+          const inside = worst(reference, which, doubles, effects);
+          expect
+            .soft(inside.error, `${what}, before the rounding, ${inside.text}`)
+            .toBeLessThanOrEqual(share);
+        });
+      });
+      expect(tf.memory().numTensors).toBe(before);
+    });
+  }
+});
+
+it('the score of a float32 rounding is at most half', () => {
+  expect(score(Math.fround(Math.PI), Math.PI)).toBeLessThanOrEqual(0.5);
+  expect(ulp32(Math.PI)).toBe(2 ** -22);
+});

@@ -1,0 +1,94 @@
+import { readdirSync, readFileSync } from 'node:fs';
+import { join } from 'node:path';
+import type * as tf from '@tensorflow/tfjs';
+import * as library from '../../src/index.js';
+
+const folder = join(import.meta.dirname, '../reference/families');
+
+/** One function of a family in one parametrization, with its reference values. */
+export interface Reference {
+  readonly family: string;
+  readonly function: string;
+  /** The compiled kernel that computes it. */
+  readonly kernel: string;
+  /** Names in order: `x` or `p`, then parameters as a user gives them; `other…` for the second distribution. */
+  readonly arguments: readonly string[];
+  readonly transforms: readonly (string | null)[];
+  readonly partials: readonly string[];
+  /** One column per argument, float32 exact. */
+  readonly columns: readonly Float32Array[];
+  /** The value, then each partial: exact values, and the sum of the sizes of their terms. */
+  readonly exact: readonly Float64Array[];
+  readonly sizes: readonly Float64Array[];
+}
+
+type Row = readonly (number | string)[];
+type Written = Omit<Reference, 'family' | 'columns' | 'exact' | 'sizes'> & { readonly rows: readonly Row[] };
+
+/** The families that have reference values. */
+export const families = readdirSync(folder)
+  .filter((name) => name.endsWith('.json'))
+  .map((name) => name.replace('.json', ''));
+
+export function references(family: string): Reference[] {
+  const written = JSON.parse(readFileSync(join(folder, `${family}.json`), 'utf8')) as Written[];
+  return written.map(({ rows, ...rest }) => {
+    const column = (k: number): Float64Array => Float64Array.from(rows, (row) => Number(row[k]));
+    const a = rest.arguments.length;
+    const results = 1 + rest.partials.length;
+    return {
+      ...rest,
+      family,
+      columns: rest.arguments.map((_, k) => Float32Array.from(column(k))),
+      exact: Array.from({ length: results }, (_, k) => column(a + k)),
+      sizes: Array.from({ length: results }, (_, k) => column(a + results + k)),
+    };
+  });
+}
+
+type Factory = (options: Record<string, tf.Tensor | number>) => library.Distribution;
+type Methods = Record<string, (...x: tf.Tensor[]) => tf.Tensor>;
+
+// What a parameter is when a function does not depend on it.
+const resting: Record<string, Record<string, number>> = {
+  normal: { mean: 0, sd: 1 },
+  laplace: { location: 0, scale: 1 },
+  logistic: { location: 0, scale: 1 },
+};
+
+function make(family: string, given: Record<string, tf.Tensor>): library.Distribution {
+  const factory = (library as unknown as Record<string, Factory>)[family]!;
+  const rest = Object.entries(resting[family] ?? {}).filter(([name]) => {
+    const spread = name === 'sd' || name === 'scale';
+    return spread
+      ? !Object.keys(given).some((g) => g !== 'mean' && g !== 'location')
+      : given[name] === undefined;
+  });
+  return factory({ ...Object.fromEntries(rest), ...given });
+}
+
+/** The referenced function through the public interface: from tensors in the order of `arguments`. */
+export function publicFunction(reference: Reference): (...tensors: tf.Tensor[]) => tf.Tensor {
+  const { family, arguments: names } = reference;
+  return (...tensors) => {
+    const own: Record<string, tf.Tensor> = {};
+    const other: Record<string, tf.Tensor> = {};
+    const points: tf.Tensor[] = [];
+    names.forEach((name, k) => {
+      if (name === 'x' || name === 'p') points.push(tensors[k]!);
+      else if (name.startsWith('other')) other[name[5]!.toLowerCase() + name.slice(6)] = tensors[k]!;
+      else own[name] = tensors[k]!;
+    });
+    const q = make(family, own);
+    if (reference.function !== 'kl') {
+      return (q as unknown as Methods)[reference.function]!(...points);
+    }
+    const kl = library.kl as (q: library.Distribution, p: library.Distribution) => tf.Tensor;
+    return kl(q, make(family, other));
+  };
+}
+
+/** `normal.logDensity(x, mean, sd)`. */
+export function titleOf(reference: Reference): string {
+  return `${reference.family}.${reference.function}(${reference.arguments.join(', ')})`;
+}
