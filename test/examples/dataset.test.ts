@@ -8,6 +8,7 @@ function table(names: string[], value: (row: number, column: number) => number):
   return {
     names,
     places: names.map((name, k) => `column ${k + 1} (${name})`),
+    numbers: Array.from({ length: 50 }, (_, i) => i + 2),
     rows: Array.from({ length: 50 }, (_, i) => Float64Array.from(names, (_, k) => value(i, k))),
   };
 }
@@ -31,6 +32,7 @@ it('sets a fifth of the rows and the hidden columns apart', () => {
   expect(first.map(([u]) => u!).sort((a, b) => a - b)).toEqual(Array.from({ length: 50 }, (_, i) => i));
   for (const part of [data.training, data.heldOut]) {
     const rows = part.x.arraySync() as number[][];
+    expect(part.numbers).toEqual(rows.map(([u]) => u! + 2));
     expect([...part.causes.get('secret')!]).toEqual(rows.map(([u]) => u! + 200));
   }
   const us = (data.training.x.arraySync() as number[][]).map(([u]) => u!);
@@ -44,7 +46,7 @@ it.each([
     'a column that never varies',
     table(['u', 'v', 'w'], (i, k) => (k === 1 ? 5 : i)),
     undefined,
-    'my.csv: column 2 (v): must vary from row to row; got 5 throughout; leave it out with --ignore "v"',
+    'my.csv: column 2 (v): must vary from row to row; got 5 throughout; leave out such columns with --ignore "v"',
   ],
   [
     'a hidden column that is not there',

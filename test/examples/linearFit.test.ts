@@ -9,7 +9,7 @@ const rows = [
   [5, 2],
 ];
 
-it('finds the coefficients of an exact relation, whatever the order of the pivots', () => {
+it('finds the coefficients of an exact relation', () => {
   const y = rows.map(([a, b]) => 3 - 2 * a! + 0.5 * b!);
   const coefficients = leastSquares(rows, y);
   for (const [k, expected] of [3, -2, 0.5].entries()) expect(coefficients[k]).toBeCloseTo(expected, 10);
@@ -23,6 +23,15 @@ it('leaves a residual that is orthogonal to every regressor', () => {
   for (const column of [() => 1, (i: number) => rows[i]![0]!, (i: number) => rows[i]![1]!]) {
     expect(left.reduce((sum, r, i) => sum + r * column(i), 0)).toBeCloseTo(0, 10);
   }
+});
+
+it('passes over a regressor that says nothing new', () => {
+  const y = [1, 2, 4, 5];
+  const coefficients = leastSquares(
+    y.map((v) => [3, v, 2 * v + 3]),
+    y,
+  );
+  for (const [k, expected] of [0, 0, 1, 0].entries()) expect(coefficients[k]).toBeCloseTo(expected, 10);
 });
 
 it('is the mean without regressors, and explains nothing', () => {

@@ -61,13 +61,14 @@ describe('pictures', () => {
     ['two hidden columns', causes, 5, 3, ['ripeness (0 green – 1 ripe)', 'sugar']],
     ['no hidden column', new Map(), 5, 3, []],
     ['no live dimension', causes, 5, 0, ['sugar']],
-    ['one latent dimension', causes, 1, 1, ['sugar']],
+    ['one live dimension', causes, 5, 1, ['sugar']],
   ])('draw a map with %s', async (_, hidden, latents, live, titles) => {
     const texts = await textsOf(latentMap(part(hidden), findings(latents, live), 'rows'));
     expect(texts).toEqual(expect.arrayContaining(titles));
     expect(texts.filter((text) => text.endsWith('(prior sd = 1)'))).toHaveLength(
       2 * Math.max(1, hidden.size),
     );
+    expect(texts.some((text) => text.includes('Color: '))).toBe(hidden.size > 0);
   });
 
   it('draw the axes that go with a column most closely', async () => {
@@ -119,8 +120,8 @@ describe('the axis of the bands', () => {
     [['700 nm', '705 nm'], 'wavelength (nm)', [700, 705]],
     [['0.5', '-2'], 'column, by its header', [0.5, -2]],
     [['3 s', '4 s'], 'column, by its header (s)', [3, 4]],
-    [['3 s', '4 m'], 'column number', [1, 2]],
-    [['u', 'v'], 'column number', [1, 2]],
+    [['3 s', '4 m'], 'column, in the order of the file', [1, 2]],
+    [['u', 'v'], 'column, in the order of the file', [1, 2]],
   ])('of %j', (names, title, positions) => {
     expect(bandAxis(names)).toEqual({ title, positions });
   });

@@ -123,6 +123,7 @@ describe('a file that can be used', () => {
   ])('is read with %s', (_, text) => {
     expect(readCsv(text, 'my.csv').names).toEqual(names);
     expect(rowsOf(text)).toEqual(expected);
+    expect(readCsv(text, 'my.csv').numbers).toEqual(expected.map((_, i) => i + 2));
   });
 
   it('may be headed by wavelengths', () => {

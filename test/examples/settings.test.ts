@@ -12,7 +12,7 @@ it.each([
   ],
   [['--steps', 'many'], `demo: --steps must be a whole number from 10 to 1000000; got "many"; ${help}`],
   [['--steps', '9'], `demo: --steps must be a whole number from 10 to 1000000; got "9"; ${help}`],
-  [['--latents', '0'], `demo: --latents must be a whole number from 1 to 64; got "0"; ${help}`],
+  [['--latents', '1'], `demo: --latents must be a whole number from 2 to 64; got "1"; ${help}`],
   [['--seed', '1.5'], `demo: --seed must be a whole number from 0 to 9007199254740991; got "1.5"; ${help}`],
   [['--hidden', 'a,,b'], `demo: --hidden must be column names with commas between; got "a,,b"; ${help}`],
   [

@@ -8,6 +8,8 @@ import type { Table } from './readCsv.js';
 export interface Part {
   /** `[rows, bands]` */
   readonly x: tf.Tensor2D;
+  /** The number of each row in the file. */
+  readonly numbers: readonly number[];
   /** The columns that the model does not see, by name. */
   readonly causes: ReadonlyMap<string, Float64Array>;
 }
@@ -32,7 +34,7 @@ const mostHeldOut = 2000;
  * @param hidden - columns that the model must not see; by default the invented causes that the table has
  */
 export function prepare(table: Table, file: string, stream: Stream, hidden?: readonly string[]): Dataset {
-  const { names, places, rows } = table;
+  const { names, places, rows, numbers } = table;
   const missing = hidden?.find((name) => !names.includes(name));
   if (missing !== undefined) {
     throw new DemoError(`${file}: --hidden must name columns of the header; it has no "${missing}"`);
@@ -42,9 +44,9 @@ export function prepare(table: Table, file: string, stream: Stream, hidden?: rea
   if (seen.length < 2) {
     throw new DemoError(`${file}: must leave at least 2 columns for the model; got ${seen.length}`);
   }
-  const order = [...tf.tidy(() => stream.permutation(rows.length).dataSync())].map((i) => rows[i]!);
+  const order = [...tf.tidy(() => stream.permutation(rows.length).dataSync())];
   const aside = Math.min(mostHeldOut, Math.ceil(rows.length / 5));
-  const training = order.slice(aside);
+  const training = order.slice(aside).map((i) => rows[i]!);
   const center = Float64Array.from(seen, (at) => mean(training, at));
   const scale = Float64Array.from(seen, (at, k) => spread(training, at, center[k]!));
   const still = seen.filter((_, k) => !(scale[k]! > 1e-6 * Math.abs(center[k]!)));
@@ -52,24 +54,25 @@ export function prepare(table: Table, file: string, stream: Stream, hidden?: rea
     const [at = 0] = still;
     const quoted = JSON.stringify(still.map((k) => names[k]).join(','));
     throw new DemoError(
-      `${file}: ${places[at]}: must vary from row to row; got ${training[0]![at]} throughout; leave it out with --ignore ${quoted}`,
+      `${file}: ${places[at]}: must vary from row to row; got ${training[0]![at]} throughout; leave out such columns with --ignore ${quoted}`,
     );
   }
-  const part = (chosen: readonly Float64Array[]): Part => ({
+  const part = (chosen: readonly number[]): Part => ({
     x: tf.tensor2d(
-      chosen.map((row) => seen.map((at) => row[at]!)),
+      chosen.map((i) => seen.map((at) => rows[i]![at]!)),
       [chosen.length, seen.length],
     ),
+    numbers: chosen.map((i) => numbers[i]!),
     causes: new Map(
       apart.map((name) => {
         const at = names.indexOf(name);
-        return [name, Float64Array.from(chosen, (row) => row[at]!)];
+        return [name, Float64Array.from(chosen, (i) => rows[i]![at]!)];
       }),
     ),
   });
   return {
     bands: seen.map((at) => names[at]!),
-    training: part(training),
+    training: part(order.slice(aside)),
     heldOut: part(order.slice(0, aside)),
     center,
     scale,

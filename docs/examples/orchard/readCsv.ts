@@ -8,6 +8,8 @@ export interface Table {
   readonly places: readonly string[];
   /** One row per line below the header, as long as `names`. */
   readonly rows: readonly Float64Array[];
+  /** The number of each row in the file, the header's being 1, as a spreadsheet counts them. */
+  readonly numbers: readonly number[];
 }
 
 /** Fewer rows than this teach nothing and leave too few to hold out. */
@@ -15,7 +17,7 @@ const fewestRows = 50;
 
 interface Record {
   readonly cells: string[];
-  /** The line in the file, the header's being 1, as a spreadsheet counts them. */
+  /** Its number in the file. */
   readonly row: number;
 }
 
@@ -51,7 +53,12 @@ export function readCsv(text: string, file: string, ignore: readonly string[] = 
       `${file}: must hold at least ${fewestRows} rows below the header; got ${rows.length}`,
     );
   }
-  return { names: kept.map((at) => names[at]!), places: kept.map((at) => column(names, at)), rows };
+  return {
+    names: kept.map((at) => names[at]!),
+    places: kept.map((at) => column(names, at)),
+    rows,
+    numbers: body.map(({ row }) => row),
+  };
 }
 
 function column(names: readonly string[], at: number): string {

@@ -42,7 +42,10 @@ export function report(
       : [
           '',
           'Hidden columns: share of the variance that a straight-line fit on the live dimensions explains',
-          ...[...causes].map(([name, share]) => `  ${name.padEnd(12)} ${percent(share).padStart(7)}`),
+          ...[...causes].map(
+            ([name, share]) =>
+              `  ${name.padEnd(12)} ${(Number.isNaN(share) ? 'does not vary' : percent(share)).padStart(7)}`,
+          ),
         ]),
     '',
     'Noise and reconstruction',

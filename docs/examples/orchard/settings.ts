@@ -26,7 +26,7 @@ Trains a model of near-infrared spectra with hidden causes and reports what it f
   --hidden A,B     columns that the model must not see, to be compared with what it finds
                    (default: those of ripeness, water, bruise and depth that the file has)
   --ignore A,B     columns to leave out, such as names
-  --latents N      dimensions of the latent space (default 8)
+  --latents N      dimensions of the latent space, 2 or more (default 8)
   --steps N        training steps of 100 rows each (default 3000)
   --seed N         the seed of everything random (default 1)
   --fruits N       how many fruits to invent, where no file is given (default 2400)
@@ -49,7 +49,7 @@ export function readSettings(args: readonly string[]): Settings | undefined {
     ...(values.data === undefined ? {} : { data: resolve(from, values.data) }),
     ...(hidden === undefined ? {} : { hidden }),
     ignore: names('ignore', values.ignore) ?? [],
-    latents: whole('latents', values.latents ?? '8', 1, 64),
+    latents: whole('latents', values.latents ?? '8', 2, 64),
     steps: whole('steps', values.steps ?? '3000', 10, 1_000_000),
     seed: whole('seed', values.seed ?? '1', 0, Number.MAX_SAFE_INTEGER),
     fruits: whole('fruits', values.fruits ?? '2400', 50, 100_000),

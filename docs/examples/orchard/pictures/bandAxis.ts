@@ -10,7 +10,7 @@ export function bandAxis(names: readonly string[]): BandAxis {
   const units = new Set(read.map((match) => match?.[2]));
   const [unit] = units;
   if (units.size !== 1 || unit === undefined) {
-    return { title: 'column number', positions: names.map((_, k) => k + 1) };
+    return { title: 'column, in the order of the file', positions: names.map((_, k) => k + 1) };
   }
   const title =
     unit === 'nm'

@@ -31,15 +31,15 @@ export async function drawPictures(
   // From the lowest to the highest value of the first cause, so that they differ.
   const order = rebuilt.map((_, i) => i);
   if (first) order.sort((a, b) => first[1][a]! - first[1][b]!);
-  const picked = Array.from(
-    { length: Math.min(shown, order.length) },
-    (_, k, last = Math.min(shown, order.length) - 1) =>
-      order[Math.round((k * (order.length - 1)) / Math.max(1, last))]!,
-  );
-  const titled = picked.map((i) => ({
-    title: `held-out ${noun} ${i + 1}${first ? `, ${first[0]} ${Number(first[1][i]!.toPrecision(3))}` : ''}`,
-    bands: rebuilt[i]!,
-  }));
+  const count = Math.min(shown, order.length);
+  const titled = Array.from({ length: count }, (_, k) => {
+    const i = order[Math.round((k * (order.length - 1)) / Math.max(1, count - 1))]!;
+    const row = `${noun === 'row' ? '' : `${noun} in `}row ${heldOut.numbers[i]}`;
+    return {
+      title: first ? `${row}, ${first[0]} ${Number(first[1][i]!.toPrecision(3))}` : row,
+      bands: rebuilt[i]!,
+    };
+  });
   const specs = {
     'learning-curve.svg': learningCurve(curve, noun, nouns),
     'latent-map.svg': latentMap(heldOut, findings, nouns),

@@ -21,14 +21,15 @@ export function latentMap(heldOut: Part, { means, dimensions }: Findings, nouns:
   const causes = [...heldOut.causes].slice(0, 4);
   const side = causes.length > 1 ? 270 : 460;
   const panels = causes.map(([name, values]) => {
-    const [a = 0, b = a] = [...axes].sort((p, q) => related(means, q, values) - related(means, p, values));
+    const [a = 0, b = 1] = [...axes].sort((p, q) => related(means, q, values) - related(means, p, values));
     return panel(means, a, b, side, { title: units[name] ?? name, values });
   });
-  if (panels.length === 0) panels.push(panel(means, axes[0]!, axes[1] ?? axes[0]!, side));
+  if (panels.length === 0) panels.push(panel(means, axes[0]!, axes[1]!, side));
+  const placed = `The ${nouns} held out, each at the mean of its posterior.`;
   return {
     title: {
       text: 'Latent map',
-      subtitle: `The ${nouns} held out, each at the mean of its posterior. Color: hidden columns, which the model never saw.`,
+      subtitle: causes.length > 0 ? `${placed} Color: hidden columns, which the model never saw.` : placed,
     },
     concat: panels,
     columns: 2,
@@ -83,5 +84,6 @@ function related(means: readonly Float32Array[], k: number, values: ArrayLike<nu
   const center = (at: (i: number) => number) => means.reduce((sum, _, i) => sum + at(i), 0) / n;
   const [mz, mv] = [center((i) => means[i]![k]!), center((i) => values[i]!)];
   const together = center((i) => (means[i]![k]! - mz) * (values[i]! - mv));
-  return together ** 2 / (center((i) => (means[i]![k]! - mz) ** 2) * center((i) => (values[i]! - mv) ** 2));
+  const spreads = center((i) => (means[i]![k]! - mz) ** 2) * center((i) => (values[i]! - mv) ** 2);
+  return spreads > 0 ? together ** 2 / spreads : 0;
 }

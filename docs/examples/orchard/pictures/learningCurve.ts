@@ -24,7 +24,7 @@ export function learningCurve(curve: readonly CurvePoint[], noun: string, nouns:
     data: { values },
     mark: { type: 'line', clip: true, strokeWidth: 2.5, point: { size: 28, filled: true } },
     encoding: {
-      x: { field: 'step', type: 'quantitative', title: 'training step' },
+      x: { field: 'step', type: 'quantitative', title: 'training step', axis: { tickCount: 7 } },
       y: {
         field: 'bound',
         type: 'quantitative',
