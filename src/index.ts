@@ -26,7 +26,23 @@ export type {
   Route,
 } from './distributions/distribution.js';
 export { type Exponential, type ExponentialOptions, exponential } from './distributions/exponential.js';
+export type {
+  ClosedFormulas,
+  ClosedOf,
+  FamilyDefinition,
+  FamilyFactory,
+  FamilyMember,
+  ParameterDomain,
+  ScalarSupport,
+} from './distributions/familyDefinition.js';
+export type { FamilyFormula, NumberFormula } from './distributions/familyFormula.js';
+export { type ImplicitDefinition, implicitFamily } from './distributions/implicitFamily.js';
 export { type Laplace, type LaplaceOptions, laplace } from './distributions/laplace.js';
+export {
+  type LocationScaleDefinition,
+  locationScaleFamily,
+  type StandardFormula,
+} from './distributions/locationScaleFamily.js';
 export { type Logistic, type LogisticOptions, logistic } from './distributions/logistic.js';
 export { type LogNormal, type LogNormalOptions, logNormal } from './distributions/logNormal.js';
 export {
@@ -38,6 +54,7 @@ export { type Normal, type NormalOptions, normal } from './distributions/normal.
 export type { OneOf } from './distributions/oneOf.js';
 export { type Poisson, type PoissonOptions, poisson } from './distributions/poisson.js';
 export { type Product, type ProductBase, product } from './distributions/product.js';
+export { type QuantileDefinition, quantileFamily } from './distributions/quantileFamily.js';
 export { type Uniform, type UniformOptions, uniform } from './distributions/uniform.js';
 export { type ClosedPartner, kl, type NoClosedKl, sampledKl } from './divergence/kl.js';
 export { hasClosedKl, registerKl } from './divergence/registerKl.js';

@@ -19,10 +19,16 @@ export interface ScalarDefinition<Family extends string, R extends Route> {
   readonly parameters: ParameterForms;
   /** Reads `x`, then parameters. */
   readonly logDensity: Formula;
-  /** A formula of standard noise and parameters, or an exact sampler over the broadcast parameters. */
+  /**
+   * A formula of standard noise and parameters; or an exact sampler over the broadcast parameters, and the
+   * formula that carries what it drew to the draw and its gradient.
+   */
   readonly draw:
     | { readonly noise: NoiseKind; readonly formula: Formula }
-    | { readonly sampler: (stream: Stream, parameters: Record<string, Float32Array>) => Float32Array };
+    | {
+        readonly sampler: (stream: Stream, parameters: Record<string, Float32Array>) => Float32Array;
+        readonly formula?: Formula;
+      };
   /** Formulas of the parameters alone. */
   readonly summaries?: Readonly<Record<string, Formula>>;
   /** Formulas of an argument, then parameters. */
@@ -91,26 +97,21 @@ function member<Family extends string, R extends Route>(
     if (count !== undefined) requireCount(`${family}.draw`, 'count', count);
     const shape = drawShape(count, arrayShape);
     const how = definition.draw;
-    if ('noise' in how) {
-      const drawn: Operand = {
-        shape,
-        source: noise(stream, how.noise, sizeOf(shape)),
-        transform: undefined,
-        constant: true,
-      };
-      const arguments_ = pick(how.formula, [drawn]);
-      return applyFormula(
-        `${family}.draw`,
-        how.formula,
-        route === 'pathwise' ? arguments_ : arguments_.map(detachedOperand),
-        { shape },
-      );
-    }
-    const values = Object.fromEntries(
+    const source =
+      'noise' in how ? noise(stream, how.noise, sizeOf(shape)) : how.sampler(stream, spread(shape));
+    if (!how.formula) return tensorOf(source, shape);
+    const drawn = pick(how.formula, [{ shape, source, transform: undefined, constant: true }]);
+    return applyFormula(
+      `${family}.draw`,
+      how.formula,
+      route === 'pathwise' ? drawn : drawn.map(detachedOperand),
+      { shape },
+    );
+  };
+  const spread = (shape: readonly number[]): Record<string, Float32Array> =>
+    Object.fromEntries(
       Object.entries(operands).map(([name, o]) => [name, broadcastValues(family, o, shape)]),
     );
-    return tensorOf(how.sampler(stream, values), shape);
-  };
 
   const methods: Record<string, unknown> = {};
   for (const [name, formula] of Object.entries(definition.summaries ?? {})) {

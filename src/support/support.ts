@@ -22,6 +22,8 @@ export interface Support {
 export const real: Support = { name: 'real', pointRank: 0, discrete: false };
 /** The positive real numbers. */
 export const positive: Support = { name: 'positive', pointRank: 0, discrete: false };
+/** The numbers from zero to one. */
+export const unitInterval: Support = { name: 'unitInterval', pointRank: 0, discrete: false };
 /** An interval that the parameters set. */
 export const interval: Support = { name: 'interval', pointRank: 0, discrete: false };
 /** Zero and one. */

@@ -31,7 +31,8 @@ export function applyFormula(
   const shapes = operands.map((o) => o.shape);
   const shape = broadcastShapes(where, spread.shape ? [...shapes, spread.shape] : shapes);
   const fold = spread.fold ?? 0;
-  return usesComposedForm()
+  const hasKernel = formula.compiled !== undefined || formula.value !== undefined;
+  return usesComposedForm() || !hasKernel
     ? applyComposed(formula, operands, shape, fold)
     : applyKernel(where, formula, operands, shape, fold);
 }

@@ -8,7 +8,8 @@ type Scalar = (...values: number[]) => number;
 
 /**
  * A scalar formula that can be applied to tensors: compiled, or as plain functions of double-precision
- * numbers with their partial derivatives; and the same from ordinary tensor operations.
+ * numbers with their partial derivatives, or neither; and the same from ordinary tensor operations, which are
+ * all there is to a formula that has no kernel.
  */
 export interface Formula {
   readonly name: string;

@@ -39,6 +39,15 @@ export async function useFastestBackend(options: BackendOptions = {}): Promise<'
     () => true,
     () => false,
   );
+  const removeAdded = watchProcessListeners();
+  try {
+    return await start(present);
+  } finally {
+    removeAdded();
+  }
+}
+
+async function start(present: boolean): Promise<'wasm' | 'cpu'> {
   for (const name of present ? (['wasm', 'cpu'] as const) : (['cpu'] as const)) {
     const started = await tf.setBackend(name).catch(() => false);
     if (started) return name;
@@ -52,4 +61,27 @@ function importWasm(): Promise<unknown> {
   // A bundler that saw the name would insist on the package, which is optional.
   const name = '@tensorflow/tfjs-backend-wasm';
   return import(/* @vite-ignore */ name);
+}
+
+interface NodeProcess {
+  listeners(event: string): readonly unknown[];
+  removeListener(event: string, listener: unknown): void;
+}
+
+/**
+ * The WASM backend's loader makes Node print its own minified source before the message of any later error
+ * that is not caught. Returns a function that takes those listeners away again.
+ */
+function watchProcessListeners(): () => void {
+  const { process } = globalThis as { process?: NodeProcess };
+  const events = ['uncaughtException', 'unhandledRejection'];
+  if (typeof process?.listeners !== 'function') return () => {};
+  const before = events.map((event) => new Set(process.listeners(event)));
+  return () => {
+    events.forEach((event, k) => {
+      for (const listener of process.listeners(event)) {
+        if (!before[k]!.has(listener)) process.removeListener(event, listener);
+      }
+    });
+  };
 }

@@ -25,7 +25,8 @@ const longestHold = 100;
  * together to g · min(1, clip / ‖g‖) (Pascanu, Mikolov and Bengio 2013, algorithm 1). Bounds and parts are
  * means over data points, in nats.
  *
- * Data are tensors or arrays of shape `[rows, …]` by the names the bound reads. Step s draws from a fork of
+ * tfjs hides an optimizer's rate from the types; `Object.assign(optimizer, { learningRate })` sets it inside the
+ * loop. Data are tensors or arrays of shape `[rows, …]` by the names the bound reads. Step s draws from a fork of
  * the stream labelled s, pass e is shuffled by one labelled e, so a run is a function of its arguments, and
  * one continued `from` a cursor equals the uninterrupted one bit for bit.
  *
