@@ -1,14 +1,17 @@
 import { readFileSync, writeFileSync } from 'node:fs';
 import os from 'node:os';
+import { pathToFileURL } from 'node:url';
 import * as tf from '@tensorflow/tfjs';
 import { pythonVersions } from './python.js';
 import type { Row } from './row.js';
 
-const folder = new URL('../docs/', import.meta.url);
+// The bench is compiled into another folder and run from the project's.
+const root = pathToFileURL(`${process.cwd()}/`);
+const folder = new URL('docs/', root);
 
 /** Where and with what the bench ran. */
 function environment() {
-  const { version } = JSON.parse(readFileSync(new URL('../package.json', import.meta.url), 'utf8'));
+  const { version } = JSON.parse(readFileSync(new URL('package.json', root), 'utf8'));
   const peer = pythonVersions();
   return {
     date: new Date().toISOString().slice(0, 10),
