@@ -1,6 +1,6 @@
 import * as tf from '@tensorflow/tfjs';
 import { binary } from '../support/support.js';
-import { choose, composedSoftplus } from '../tensor/composedMath.js';
+import { choose, composedSigmoid, composedSoftplus } from '../tensor/composedMath.js';
 import { kernel } from '../tensor/formula.js';
 import { logOdds } from '../tensor/transforms.js';
 import type { Distribution, HasCdf, HasEntropy, HasMean, HasMode, HasVariance } from './distribution.js';
@@ -49,12 +49,12 @@ const make = scalarFamily({
     formula: kernel('bernoulliDraw', (e, l) => tf.cast(tf.greater(tf.add(e!, l!), 0), 'float32')),
   },
   summaries: {
-    mean: kernel('bernoulliMean', (l) => tf.sigmoid(l!)),
-    variance: kernel('bernoulliVariance', (l) => tf.mul(tf.sigmoid(l!), tf.sigmoid(tf.neg(l!)))),
+    mean: kernel('bernoulliMean', (l) => composedSigmoid(l!)),
+    variance: kernel('bernoulliVariance', (l) => tf.mul(composedSigmoid(l!), composedSigmoid(tf.neg(l!)))),
     mode: kernel('bernoulliMode', (l) => tf.cast(tf.greater(l!, 0), 'float32')),
     entropy: kernel('bernoulliEntropy', (l) => {
       const a = tf.abs(l!);
-      return tf.add(composedSoftplus(tf.neg(a)), tf.mul(a, tf.sigmoid(tf.neg(a))));
+      return tf.add(composedSoftplus(tf.neg(a)), tf.mul(a, composedSigmoid(tf.neg(a))));
     }),
   },
   functions: {
@@ -62,7 +62,7 @@ const make = scalarFamily({
       choose(tf.greaterEqual(x!, 1), tf.onesLike(tf.add(x!, l!)), 0).add(
         choose(
           tf.logicalAnd(tf.greaterEqual(x!, 0), tf.less(x!, 1)),
-          tf.sigmoid(tf.neg(tf.add(l!, tf.zerosLike(x!)))),
+          composedSigmoid(tf.neg(tf.add(l!, tf.zerosLike(x!)))),
           0,
         ),
       ),

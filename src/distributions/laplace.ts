@@ -1,6 +1,7 @@
 import * as tf from '@tensorflow/tfjs';
 import { real } from '../support/support.js';
 import type { ParameterValue } from '../tensor/checks.js';
+import { composedExp } from '../tensor/composedMath.js';
 import { kernel } from '../tensor/formula.js';
 import { exponentiated } from '../tensor/transforms.js';
 import type {
@@ -65,7 +66,7 @@ const make = scalarFamily({
   functions: {
     cdf: kernel('laplaceCdf', (x, l, s) => {
       const z = tf.div(tf.sub(x!, l!), s!);
-      const tail = tf.mul(0.5, tf.exp(tf.neg(tf.abs(z))));
+      const tail = tf.mul(0.5, composedExp(tf.neg(tf.abs(z))));
       return tf.where(tf.less(z, 0), tail, tf.sub(1, tail));
     }),
     quantile: kernel('laplaceQuantile', (p, l, s) => {

@@ -7,12 +7,10 @@ import type { Formula } from '../tensor/formula.js';
 import { type FamilyFactory, readDefinition } from './familyDefinition.js';
 import { scalarFamily } from './scalarFamily.js';
 
-type Slope = (z: number) => number;
-
 /** A function of one number with its derivative. */
 export interface StandardFormula {
-  readonly value: Slope;
-  readonly derivative: Slope;
+  value(z: number): number;
+  derivative(z: number): number;
   /** The same from tensor operations, for `composed` and for accelerators. */
   composed?(z: tf.Tensor): tf.Tensor;
 }

@@ -1,7 +1,7 @@
 import * as tf from '@tensorflow/tfjs';
 import { positive } from '../support/support.js';
 import type { ParameterValue } from '../tensor/checks.js';
-import { choose, composedNormalCdf } from '../tensor/composedMath.js';
+import { choose, composedExp, composedNormalCdf } from '../tensor/composedMath.js';
 import { kernel } from '../tensor/formula.js';
 import { noComposedForm } from '../tensor/noComposedForm.js';
 import { exponentiated } from '../tensor/transforms.js';
@@ -56,15 +56,15 @@ const make = scalarFamily({
   }),
   draw: {
     noise: 'normal',
-    formula: kernel('logNormalDraw', (e, l, s) => tf.exp(tf.add(l!, tf.mul(s!, e!)))),
+    formula: kernel('logNormalDraw', (e, l, s) => composedExp(tf.add(l!, tf.mul(s!, e!)))),
   },
   summaries: {
-    mean: kernel('logNormalMean', (l, s) => tf.exp(tf.add(l!, tf.mul(0.5, tf.square(s!))))),
+    mean: kernel('logNormalMean', (l, s) => composedExp(tf.add(l!, tf.mul(0.5, tf.square(s!))))),
     variance: kernel('logNormalVariance', (l, s) => {
       const v = tf.square(s!);
-      return tf.mul(tf.expm1(v), tf.exp(tf.add(tf.mul(2, l!), v)));
+      return tf.mul(tf.expm1(v), composedExp(tf.add(tf.mul(2, l!), v)));
     }),
-    mode: kernel('logNormalMode', (l, s) => tf.exp(tf.sub(l!, tf.square(s!)))),
+    mode: kernel('logNormalMode', (l, s) => composedExp(tf.sub(l!, tf.square(s!)))),
     entropy: kernel('logNormalEntropy', (l, s) => tf.add(tf.add(l!, tf.log(s!)), halfLogTwoPi + 0.5)),
   },
   functions: {

@@ -1,7 +1,7 @@
 import * as tf from '@tensorflow/tfjs';
 import { real } from '../support/support.js';
 import type { ParameterValue } from '../tensor/checks.js';
-import { composedSoftplus } from '../tensor/composedMath.js';
+import { composedSigmoid, composedSoftplus } from '../tensor/composedMath.js';
 import { kernel } from '../tensor/formula.js';
 import { exponentiated } from '../tensor/transforms.js';
 import type {
@@ -65,7 +65,7 @@ const make = scalarFamily({
     entropy: kernel('logisticEntropy', (s) => tf.add(tf.log(s!), 2)),
   },
   functions: {
-    cdf: kernel('logisticCdf', (x, l, s) => tf.sigmoid(tf.div(tf.sub(x!, l!), s!))),
+    cdf: kernel('logisticCdf', (x, l, s) => composedSigmoid(tf.div(tf.sub(x!, l!), s!))),
     quantile: kernel('logisticQuantile', (p, l, s) =>
       tf.add(l!, tf.mul(s!, tf.sub(tf.log(p!), tf.log(tf.sub(1, p!))))),
     ),

@@ -3,7 +3,7 @@ import type { Distribution } from '../distributions/distribution.js';
 import { isScalar, type ScalarDistribution } from '../distributions/scalarFamily.js';
 import { broadcastShapes } from '../kernels/layout.js';
 import { applyFormula } from '../tensor/apply.js';
-import { composedSoftplus } from '../tensor/composedMath.js';
+import { composedExp, composedSigmoid, composedSoftplus } from '../tensor/composedMath.js';
 import { type Formula, kernel } from '../tensor/formula.js';
 import { addKl, type ClosedKlPairs } from './registry.js';
 
@@ -45,7 +45,7 @@ export function registerScalarKl(): void {
       const gap = tf.abs(tf.sub(l!, m!));
       const r = tf.div(s!, t!);
       return tf.sub(
-        tf.add(tf.div(gap, t!), tf.mul(r, tf.exp(tf.neg(tf.div(gap, s!))))),
+        tf.add(tf.div(gap, t!), tf.mul(r, composedExp(tf.neg(tf.div(gap, s!))))),
         tf.add(1, tf.log(r)),
       );
     }),
@@ -70,7 +70,7 @@ export function registerScalarKl(): void {
   add(
     'bernoulli|bernoulli',
     kernel('bernoulliKl', (a, b) =>
-      tf.add(tf.mul(tf.sigmoid(a!), tf.sub(a!, b!)), tf.sub(composedSoftplus(b!), composedSoftplus(a!))),
+      tf.add(tf.mul(composedSigmoid(a!), tf.sub(a!, b!)), tf.sub(composedSoftplus(b!), composedSoftplus(a!))),
     ),
   );
   add(

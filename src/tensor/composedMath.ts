@@ -1,11 +1,49 @@
 import * as tf from '@tensorflow/tfjs';
+import { detach } from './detach.js';
+import { runOnTape } from './engine.js';
 
 // Special functions from differentiable tensor operations, for `composed` and for accelerators. tfjs's own
-// softplus and erf are not accurate enough to build on.
+// softplus and erf are not accurate enough to build on. Its exp, sigmoid, tanh and softmax have a wrong second
+// derivative: they save their output, the engine records the saved copy before the operation that made it, and
+// so the way back through that copy is lost without a word. Here every derivative is a function of the input.
 
-/** log(1 + exp(x)) = max(x, 0) + log1p(exp(−|x|)). */
+function withSlope(
+  x: tf.Tensor,
+  value: (x: tf.Tensor) => tf.Tensor,
+  slope: (x: tf.Tensor) => tf.Tensor,
+): tf.Tensor {
+  return runOnTape({
+    inputs: { x },
+    forward: () => value(x),
+    backward: (dy, [saved]) => ({ x: () => tf.mul(dy, slope(saved!)) }),
+  });
+}
+
+/** exp(x), with every derivative. */
+export function composedExp(x: tf.Tensor): tf.Tensor {
+  return withSlope(x, tf.exp, composedExp);
+}
+
+/** 1 / (1 + exp(−x)), with every derivative. */
+export function composedSigmoid(x: tf.Tensor): tf.Tensor {
+  return withSlope(x, tf.sigmoid, (v) => tf.mul(composedSigmoid(v), composedSigmoid(tf.neg(v))));
+}
+
+/** log(1 + exp(x)) as max(x, 0) + log1p(exp(−|x|)), with every derivative, at the kink too. */
 export function composedSoftplus(x: tf.Tensor): tf.Tensor {
-  return tf.add(tf.relu(x), tf.log1p(tf.exp(tf.neg(tf.abs(x)))));
+  return withSlope(x, (v) => tf.add(tf.relu(v), tf.log1p(tf.exp(tf.neg(tf.abs(v))))), composedSigmoid);
+}
+
+/** log Σ exp(x) along the last axis, with every derivative. */
+export function composedLogSumExp(x: tf.Tensor): tf.Tensor {
+  const most = detach(tf.max(x, -1, true));
+  const finite = tf.where(tf.isFinite(most), most, tf.zerosLike(most));
+  return tf.add(tf.log(tf.sum(composedExp(tf.sub(x, finite)), -1)), tf.squeeze(finite, [-1]));
+}
+
+/** x − log Σ exp(x) along the last axis, with every derivative. */
+export function composedLogSoftmax(x: tf.Tensor): tf.Tensor {
+  return tf.sub(x, tf.expandDims(composedLogSumExp(x), -1));
 }
 
 /** log Γ(x) for x > 0: Stirling's series eight steps up, then the recurrence down (DLMF 5.11.1, 5.5.1). */
@@ -36,7 +74,7 @@ export function composedNormalCdf(x: tf.Tensor): tf.Tensor {
   let polynomial: tf.Tensor = tf.fill(x.shape, coefficients[coefficients.length - 1]!);
   for (let k = coefficients.length - 2; k >= 0; k--)
     polynomial = tf.add(coefficients[k]!, tf.mul(polynomial, t));
-  const upper = tf.mul(tf.mul(0.5, t), tf.exp(tf.sub(polynomial, tf.square(z))));
+  const upper = tf.mul(tf.mul(0.5, t), composedExp(tf.sub(polynomial, tf.square(z))));
   return tf.where(tf.less(x, 0), upper, tf.sub(1, upper));
 }
 

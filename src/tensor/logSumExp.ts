@@ -1,7 +1,8 @@
-import * as tf from '@tensorflow/tfjs';
+import type * as tf from '@tensorflow/tfjs';
 import { ShapeError } from '../errors.js';
 import { requireTensor, shapeText } from './checks.js';
 import { usesComposedForm } from './composed.js';
+import { composedLogSumExp } from './composedMath.js';
 import { runHostOperation } from './hostOperation.js';
 
 /**
@@ -31,7 +32,7 @@ export function logSumExp(x: tf.Tensor): tf.Tensor {
       `logSumExp: x must have a last axis with at least one element; got shape ${shapeText(x.shape)}; reshape it`,
     );
   }
-  if (usesComposedForm()) return tf.logSumExp(x, -1);
+  if (usesComposedForm()) return composedLogSumExp(x);
   return runHostOperation({
     where: 'logSumExp',
     inputs: [x],

@@ -1,7 +1,7 @@
 import * as tf from '@tensorflow/tfjs';
 import { applyFormula } from './apply.js';
 import { requireTensor } from './checks.js';
-import { composedLogGamma, composedNormalCdf, composedSoftplus } from './composedMath.js';
+import { composedLogGamma, composedNormalCdf, composedSigmoid, composedSoftplus } from './composedMath.js';
 import { type KernelName, kernel } from './formula.js';
 import { noComposedForm } from './noComposedForm.js';
 
@@ -65,7 +65,7 @@ export function softplusInverse(x: tf.Tensor): tf.Tensor {
   return softplusInverseOperation(x);
 }
 
-const sigmoidOperation = elementwise('sigmoid', (x) => tf.sigmoid(x!));
+const sigmoidOperation = elementwise('sigmoid', (x) => composedSigmoid(x!));
 
 /**
  * The logistic function, from log odds to a probability.

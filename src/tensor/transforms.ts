@@ -1,5 +1,6 @@
 import * as tf from '@tensorflow/tfjs';
 import * as numeric from '../numeric/transforms.js';
+import { composedExp } from './composedMath.js';
 import { type KernelName, kernel, type Transform } from './formula.js';
 
 function transform(
@@ -14,12 +15,12 @@ function transform(
 
 /** A log variance to a standard deviation, exp(v / 2). */
 export const expHalf = transform('expHalf', numeric.expHalf, numeric.expHalf_v, (v) =>
-  tf.exp(tf.mul(v, 0.5)),
+  composedExp(tf.mul(v, 0.5)),
 );
 
 /** A logarithm to what it is the logarithm of, exp(v). */
 export const exponentiated = transform('exponential', numeric.exponential, numeric.exponential_v, (v) =>
-  tf.exp(v),
+  composedExp(v),
 );
 
 /** A variance to a standard deviation, √v. */
