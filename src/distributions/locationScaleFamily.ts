@@ -9,7 +9,9 @@ import { scalarFamily } from './scalarFamily.js';
 
 /** A function of one number with its derivative. */
 export interface StandardFormula {
+  /** The function itself. */
   value(z: number): number;
+  /** Its derivative. */
   derivative(z: number): number;
   /** The same from tensor operations, for `composed` and for accelerators. */
   composed?(z: tf.Tensor): tf.Tensor;
