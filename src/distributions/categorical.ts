@@ -1,17 +1,19 @@
 import * as tf from '@tensorflow/tfjs';
 import { ParameterError, ShapeError } from '../errors.js';
 import { broadcastShapes, broadcastStrides, forEachBroadcast, sizeOf } from '../kernels/layout.js';
+import { outside } from '../numeric/outside.js';
 import { categoricalDraws } from '../random/noise.js';
 import { requireStream, type Stream } from '../random/stream.js';
 import { categories } from '../support/support.js';
 import { valuesAreChecked } from '../tensor/backend.js';
 import { positionText, requireCount, requireTensor, shapeText } from '../tensor/checks.js';
 import { usesComposedForm } from '../tensor/composed.js';
+import { composedExp, composedLogSoftmax } from '../tensor/composedMath.js';
 import { floatsOf, tensorOf } from '../tensor/engine.js';
 import { runHostOperation } from '../tensor/hostOperation.js';
-import { rowLogSums } from '../tensor/logSumExp.js';
-import { composedTensor, detachedOperand, type Operand, operandData } from '../tensor/operand.js';
+import { composedTensor, detachedOperand, type Operand, operandData, rawTensor } from '../tensor/operand.js';
 import { logarithm } from '../tensor/transforms.js';
+import { type CategoricalRows, categoricalRows, ownSlope, totalSlope } from './categoricalRows.js';
 import { type Distribution, drawShape, type HasEntropy, type HasMode } from './distribution.js';
 import type { OneOf } from './oneOf.js';
 import { type Form, finite, readParameters, unitClosed } from './parameters.js';
@@ -91,54 +93,55 @@ function member(operand: Operand, k: number): Categorical {
     if (usesComposedForm()) return composedLogDensity(x, operand, k, shape);
     const points = floatsOf(x);
     const strides = [broadcastStrides(x.shape, shape), broadcastStrides(arrayShape, shape)];
-    return logitOperation(
-      'categorical.logDensity',
-      operand,
-      shape,
-      (raw) => {
-        const logits = transformed(operand, raw);
-        const sums = rowLogSums(logits, k);
+    const legal = (label: number): boolean => Number.isInteger(label) && label >= 0 && label < k;
+    return rowOperation('categorical.logDensity', operand, k, shape, {
+      forward: ({ logs }) => {
         const out = new Float32Array(sizeOf(shape));
         forEachBroadcast(shape, strides, (i, [at, row]) => {
           const label = points[at!]!;
-          const legal = Number.isInteger(label) && label >= 0 && label < k;
-          out[i] = legal ? logits[row! * k + label]! - sums[row!]! : Number.NEGATIVE_INFINITY;
+          out[i] = legal(label) ? logs[row! * k + label]! : outside(label);
         });
         return out;
       },
-      (raw, upstream) => {
-        const logits = transformed(operand, raw);
-        const sums = rowLogSums(logits, k);
-        const gradient = new Float64Array(raw.length);
+      gradient: (rows, upstream) => {
+        const gradient = new Float64Array(rows.raw.length);
         forEachBroadcast(shape, strides, (i, [at, row]) => {
           const label = points[at!]!;
           const dy = upstream[i]!;
-          if (dy === 0 || !(Number.isInteger(label) && label >= 0 && label < k)) return;
+          if (dy === 0 || !legal(label)) return;
           for (let j = 0; j < k; j++) {
-            const share = Math.exp(logits[row! * k + j]! - sums[row!]!);
-            gradient[row! * k + j]! += dy * ((j === label ? 1 : 0) - share);
+            const own = row! * k + j;
+            gradient[own]! += dy * (j === label ? ownSlope(rows, own) : -totalSlope(rows, own));
           }
         });
-        return chained(operand, raw, gradient);
+        return gradient;
       },
-    );
+    });
   };
 
   const draw = (stream: Stream, count?: number): tf.Tensor => {
     requireStream('categorical.draw', stream);
     if (count !== undefined) requireCount('categorical.draw', 'count', count);
     const shape = drawShape(count, arrayShape);
-    const logits = Float32Array.from(transformed(operand, operandData(operand)));
+    const logits = Float32Array.from(categoricalRows(operand, operandData(operand), k).logs);
     const repeated = new Float32Array(sizeOf(shape) * k);
     for (let start = 0; start < repeated.length; start += logits.length) repeated.set(logits, start);
     return tensorOf(categoricalDraws(stream, repeated, k), shape);
   };
 
-  const logProbabilities = (): tf.Tensor =>
-    tf.tidy(() => {
-      const logits = composedTensor(operand);
-      return tf.logSoftmax(logits, -1);
+  const logProbabilities = (): tf.Tensor => {
+    if (usesComposedForm()) return tf.tidy(() => composedLogSoftmax(composedTensor(operand)));
+    return rowOperation('categorical.logProbabilities', operand, k, operand.shape, {
+      forward: ({ logs }) => Float32Array.from(logs),
+      gradient: (rows, upstream) =>
+        Float64Array.from(rows.raw, (_, i) => {
+          const start = i - (i % k);
+          let sum = upstream[i] === 0 ? 0 : upstream[i]! * ownSlope(rows, i);
+          for (let j = start; j < start + k; j++) if (j !== i) sum -= upstream[j]! * totalSlope(rows, i);
+          return sum;
+        }),
     });
+  };
 
   return Object.freeze({
     family: 'categorical' as const,
@@ -155,80 +158,70 @@ function member(operand: Operand, k: number): Categorical {
     },
     logDensity,
     logProbabilities,
-    mode: () =>
-      tf.argMax(
-        tf.tidy(() => composedTensor(operand)),
-        -1,
-      ),
-    entropy: () =>
-      logitOperation(
-        'categorical.entropy',
-        operand,
-        arrayShape,
-        (raw) => rowEntropies(transformed(operand, raw), k),
-        (raw, upstream) => {
-          const logits = transformed(operand, raw);
-          const sums = rowLogSums(logits, k);
-          const entropies = rowEntropies(logits, k);
-          const gradient = Float64Array.from(logits, (v, i) => {
+    // Logarithms keep the order, so that the raw parameter will do.
+    mode: () => tf.tidy(() => tf.argMax(rawTensor(operand), -1)),
+    entropy: () => {
+      if (usesComposedForm()) {
+        return tf.tidy(() => {
+          const logs = logProbabilities();
+          return tf.neg(
+            tf.sum(tf.where(tf.less(logs, -200), tf.zerosLike(logs), tf.mul(composedExp(logs), logs)), -1),
+          );
+        });
+      }
+      return rowOperation('categorical.entropy', operand, k, arrayShape, {
+        forward: (rows) => Float32Array.from(rowEntropies(rows)),
+        gradient: (rows, upstream) => {
+          const entropies = rowEntropies(rows);
+          return rows.logs.map((log, i) => {
             const row = Math.floor(i / k);
-            const logP = v - sums[row]!;
-            const p = Math.exp(logP);
-            return p === 0 ? 0 : -upstream[row]! * p * (logP + entropies[row]!);
+            // An impossible category stays out of the gradient, where that of p log p would be infinite.
+            if (log === Number.NEGATIVE_INFINITY) return 0;
+            return -upstream[row]! * totalSlope(rows, i) * (log + entropies[row]!);
           });
-          return chained(operand, raw, gradient);
         },
-      ),
+      });
+    },
     detached: () => member(detachedOperand(operand), k),
   }) as unknown as Categorical;
 }
 
-/** The logits that a raw parameter stands for, in double precision. */
-export function transformed(operand: Operand, raw: Float32Array): Float64Array {
-  const transform = operand.transform;
-  return Float64Array.from(raw, (v) => (transform ? transform.value(v) : v));
-}
-
-/** A gradient in the logits carried back through the transform; a zero stays zero whatever the transform. */
-export function chained(operand: Operand, raw: Float32Array, gradient: Float64Array): Float32Array {
-  const transform = operand.transform;
-  return Float32Array.from(gradient, (g, i) =>
-    transform && g !== 0 ? g * transform.derivative(raw[i]!) : g,
-  );
-}
-
-function rowEntropies(logits: Float64Array, k: number): Float32Array {
-  const sums = rowLogSums(logits, k);
-  const out = new Float64Array(sums.length);
-  logits.forEach((v, i) => {
-    const row = Math.floor(i / k);
-    const logP = v - sums[row]!;
-    const p = Math.exp(logP);
-    if (p > 0) out[row]! -= p * logP;
+function rowEntropies({ logs, k }: CategoricalRows): Float64Array {
+  const out = new Float64Array(logs.length / k);
+  logs.forEach((log, i) => {
+    const p = Math.exp(log);
+    if (p > 0) out[Math.floor(i / k)]! -= p * log;
   });
-  return Float32Array.from(out);
+  return out;
 }
 
-function logitOperation(
+interface RowOperation {
+  forward(rows: CategoricalRows): Float32Array;
+  /** The gradient in the raw numbers. */
+  gradient(rows: CategoricalRows, upstream: Float32Array): Float64Array;
+}
+
+function rowOperation(
   where: string,
   operand: Operand,
+  k: number,
   outShape: readonly number[],
-  forward: (raw: Float32Array) => Float32Array,
-  gradient: (raw: Float32Array, upstream: Float32Array) => Float32Array,
+  { forward, gradient }: RowOperation,
 ): tf.Tensor {
   const tracked = !operand.constant && operand.source instanceof tf.Tensor;
   return runHostOperation({
     where,
     inputs: tracked ? [operand.source as tf.Tensor] : [],
     outShape,
-    forward: ([raw]) => forward(raw ?? operandData(operand)),
-    gradient: (_k, [raw], upstream) => gradient(raw!, upstream),
+    forward: ([raw]) => forward(categoricalRows(operand, raw ?? operandData(operand), k)),
+    gradient: (_k, [raw], upstream) =>
+      Float32Array.from(gradient(categoricalRows(operand, raw!, k), upstream)),
   });
 }
 
 function composedLogDensity(x: tf.Tensor, operand: Operand, k: number, shape: number[]): tf.Tensor {
   return tf.tidy(() => {
-    const logP = tf.logSoftmax(composedTensor(operand), -1);
+    const logP = composedLogSoftmax(composedTensor(operand));
     const full = tf.broadcastTo(logP, [...shape, k]);
     const points = tf.broadcastTo(x, shape);
     const hot = tf.equal(tf.expandDims(points, -1), tf.range(0, k));

@@ -61,8 +61,10 @@ export function detachedOperand(operand: Operand): Operand {
 export function rawTensor(operand: Operand): tf.Tensor {
   const { source, shape } = operand;
   if (source instanceof Float32Array) return tensorOf(source.slice(), shape);
-  const tensor = operand.constant ? detach(source) : source.clone();
-  return tensor.dtype === 'float32' ? tensor : tf.tidy(() => tensor.toFloat());
+  return tf.tidy(() => {
+    const tensor = operand.constant ? detach(source) : source.clone();
+    return tensor.dtype === 'float32' ? tensor : tensor.toFloat();
+  });
 }
 
 /** The operand as a tensor after its transform, from ordinary tensor operations. */
