@@ -175,11 +175,14 @@ function estimateOnce(pairing: Pairing, settings: Settings, data: object, stream
     ) as tf.Tensor1D;
   }
 
-  const likelihood = Object.values(logLikelihood).reduce<tf.Tensor>(
-    (sum, term) => tf.add(sum, term),
-    tf.scalar(0),
-  );
-  const value = Object.values(divergence).reduce<tf.Tensor>((rest, term) => tf.sub(rest, term), likelihood);
+  const [first, ...others] = Object.values(logLikelihood) as [tf.Tensor, ...tf.Tensor[]];
+  const likelihood = others.reduce((sum, term) => tf.add(sum, term), first);
+  const divergences = Object.values<tf.Tensor>(divergence);
+  // Never the very tensor that also stands in the parts, so that either may be disposed alone.
+  const value =
+    divergences.length === 0
+      ? likelihood.clone()
+      : divergences.reduce((rest, term) => tf.sub(rest, term), likelihood);
   return {
     value: value as tf.Tensor1D,
     surrogate: surrogateOf(settings, value, likelihood, divergence),
