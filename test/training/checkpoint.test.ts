@@ -329,7 +329,7 @@ describe('refusals', () => {
     [
       'a date in the cursor',
       { variables, cursor: { a: new Date(0) } },
-      'ParameterError: checkpoint: cursor.a must be a JSON value; got an object with keys (none); keep finite numbers, strings, booleans, null, arrays and plain objects of them',
+      'ParameterError: checkpoint: cursor.a must be a JSON value; got an instance of Date; keep finite numbers, strings, booleans, null, arrays and plain objects of them',
     ],
     [
       'no optimizer',
