@@ -1,9 +1,9 @@
 import * as tf from '@tensorflow/tfjs';
 import { positive } from '../support/support.js';
 import type { ParameterValue } from '../tensor/checks.js';
-import { choose, composedExp, composedNormalCdf } from '../tensor/composedMath.js';
+import { choose, composedExp } from '../tensor/composedMath.js';
+import { composedNormalCdf, composedNormalQuantile } from '../tensor/composedNormal.js';
 import { kernel } from '../tensor/formula.js';
-import { noComposedForm } from '../tensor/noComposedForm.js';
 import { exponentiated } from '../tensor/transforms.js';
 import type {
   Distribution,
@@ -71,7 +71,9 @@ const make = scalarFamily({
     cdf: kernel('logNormalCdfOf', (x, l, s) =>
       choose(tf.greater(x!, 0), composedNormalCdf(tf.div(tf.sub(tf.log(safe(x!)), l!), s!)), 0),
     ),
-    quantile: kernel('logNormalQuantileOf', noComposedForm('logNormal.quantile')),
+    quantile: kernel('logNormalQuantileOf', (p, l, s) =>
+      composedExp(tf.add(l!, tf.mul(s!, composedNormalQuantile(p!)))),
+    ),
   },
 });
 

@@ -1,9 +1,8 @@
 import * as tf from '@tensorflow/tfjs';
 import { real } from '../support/support.js';
 import type { ParameterValue } from '../tensor/checks.js';
-import { composedNormalCdf } from '../tensor/composedMath.js';
+import { composedNormalCdf, composedNormalQuantile } from '../tensor/composedNormal.js';
 import { kernel } from '../tensor/formula.js';
-import { noComposedForm } from '../tensor/noComposedForm.js';
 import { expHalf, exponentiated, inverseSquareRoot, squareRoot } from '../tensor/transforms.js';
 import type {
   Distribution,
@@ -67,7 +66,7 @@ const make = scalarFamily({
   },
   functions: {
     cdf: kernel('normalCdfOf', (x, m, s) => composedNormalCdf(tf.div(tf.sub(x!, m!), s!))),
-    quantile: kernel('normalQuantileOf', noComposedForm('normal.quantile')),
+    quantile: kernel('normalQuantileOf', (p, m, s) => tf.add(m!, tf.mul(s!, composedNormalQuantile(p!)))),
   },
 });
 

@@ -7,7 +7,8 @@ import { runOnTape } from './engine.js';
 // derivative: they save their output, the engine records the saved copy before the operation that made it, and
 // so the way back through that copy is lost without a word. Here every derivative is a function of the input.
 
-function withSlope(
+/** An operation whose derivative is another one: both are given as functions of the input. */
+export function withSlope(
   x: tf.Tensor,
   value: (x: tf.Tensor) => tf.Tensor,
   slope: (x: tf.Tensor) => tf.Tensor,
@@ -60,22 +61,6 @@ export function composedLogGamma(x: tf.Tensor): tf.Tensor {
     tf.add(series, 0.5 * Math.log(2 * Math.PI)),
   );
   return tf.sub(stirling, tf.log(product));
-}
-
-/** Φ(x) through erfc's rational-exponential form of Numerical Recipes' Chebyshev fit, relative error 1.2e-7. */
-export function composedNormalCdf(x: tf.Tensor): tf.Tensor {
-  // Coefficients: Press et al., Numerical Recipes, 2nd edition (1992), section 6.2, erfcc.
-  const coefficients = [
-    -1.26551223, 1.00002368, 0.37409196, 0.09678418, -0.18628806, 0.27886807, -1.13520398, 1.48851587,
-    -0.82215223, 0.17087277,
-  ];
-  const z = tf.div(tf.abs(x), Math.SQRT2);
-  const t = tf.div(1, tf.add(1, tf.mul(z, 0.5)));
-  let polynomial: tf.Tensor = tf.fill(x.shape, coefficients[coefficients.length - 1]!);
-  for (let k = coefficients.length - 2; k >= 0; k--)
-    polynomial = tf.add(coefficients[k]!, tf.mul(polynomial, t));
-  const upper = tf.mul(tf.mul(0.5, t), composedExp(tf.sub(polynomial, tf.square(z))));
-  return tf.where(tf.less(x, 0), upper, tf.sub(1, upper));
 }
 
 /** Where `inside` holds, `value`; elsewhere `otherwise`. Gradients are zero where it does not hold. */

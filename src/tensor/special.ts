@@ -1,7 +1,14 @@
 import * as tf from '@tensorflow/tfjs';
 import { applyFormula } from './apply.js';
 import { requireTensor } from './checks.js';
-import { composedLogGamma, composedNormalCdf, composedSigmoid, composedSoftplus } from './composedMath.js';
+import { composedLogGamma, composedSigmoid, composedSoftplus } from './composedMath.js';
+import {
+  composedErf,
+  composedErfcx,
+  composedLogNormalCdf,
+  composedNormalCdf,
+  composedNormalQuantile,
+} from './composedNormal.js';
 import { type KernelName, kernel } from './formula.js';
 import { noComposedForm } from './noComposedForm.js';
 
@@ -175,9 +182,7 @@ export function digamma(x: tf.Tensor): tf.Tensor {
   return digammaOperation(x);
 }
 
-const erfOperation = elementwise('erf', (x) =>
-  tf.sub(tf.mul(2, composedNormalCdf(tf.mul(x!, Math.SQRT2))), 1),
-);
+const erfOperation = elementwise('erf', (x) => composedErf(x!));
 
 /**
  * The error function.
@@ -221,7 +226,7 @@ export function erfc(x: tf.Tensor): tf.Tensor {
   return erfcOperation(x);
 }
 
-const erfcxOperation = elementwise('erfcx', noComposedForm('erfcx'));
+const erfcxOperation = elementwise('erfcx', (x) => composedErfcx(x!));
 
 /**
  * The scaled complementary error function, which does not underflow.
@@ -265,7 +270,7 @@ export function normalCdf(x: tf.Tensor): tf.Tensor {
   return normalCdfOperation(x);
 }
 
-const logNormalCdfOperation = elementwise('logNormalCdf', noComposedForm('logNormalCdf'));
+const logNormalCdfOperation = elementwise('logNormalCdf', (x) => composedLogNormalCdf(x!));
 
 /**
  * The logarithm of the standard normal distribution function, accurate far in the lower tail.
@@ -287,7 +292,7 @@ export function logNormalCdf(x: tf.Tensor): tf.Tensor {
   return logNormalCdfOperation(x);
 }
 
-const normalQuantileOperation = elementwise('normalQuantile', noComposedForm('normalQuantile'));
+const normalQuantileOperation = elementwise('normalQuantile', (x) => composedNormalQuantile(x!));
 
 /**
  * The standard normal quantile function.
