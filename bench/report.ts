@@ -46,7 +46,7 @@ function page(where: ReturnType<typeof environment>, rows: readonly Row[]): stri
 
 Written by \`npm run bench\`; the same numbers stand in [benchmarks.json](benchmarks.json). Measured on ${where.date}: ${where.machine}, load average ${where.loadAverage.toFixed(1)} at the end; ${versions.join(', ')}. Everything runs on one thread. Times are processor time of the process, its helper threads included, since a shared machine's wall clock also counts what others do.
 
-The two sides of a row run in turn in one process, A B A B, in alternating order, after a warm-up; NumPy and SciPy run in a process of their own right before. The table gives medians; the ratio is median over median. Its spread is the quartiles of the ratios round by round (against NumPy and SciPy: of our samples over their median). The ratio of the minima shows what is left when nothing else disturbs. A ratio below 1 means that leadline is faster.
+The two sides of a row run in turn in one process, A B A B, in alternating order, after a warm-up; NumPy and SciPy run in a process of their own, right before or after, on one thread as well. The table gives medians; the ratio is median over median. Its spread is the quartiles of the ratios round by round (against NumPy and SciPy: of our samples over their median). The ratio of the minima shows what is left when nothing else disturbs. A ratio below 1 means that leadline is faster. It evaluates densities in double precision and rounds once; tfjs operations compute in single precision throughout, SciPy in double.
 
 ${titles
   .map((title) =>
@@ -76,7 +76,7 @@ function table(title: string, rows: readonly Row[]): string {
     const { own, peer, ratio, quartiles, leastRatio, rounds } = row.comparison;
     const cells = [
       row.what,
-      row.backend || 'none',
+      row.backend || '–',
       row.peer,
       digits(own.median),
       digits(peer.median),

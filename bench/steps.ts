@@ -9,8 +9,8 @@ import type { Row } from './row.js';
 /** A training step through the library beside the same step written by hand on tfjs. */
 export function* steps(): Generator<Row> {
   if (tf.getBackend() === 'wasm') {
-    yield stepRow(large, { rounds: 40 }, 1.05);
-    yield stepRow(small, { rounds: 100, batch: 5, warmUp: 10 }, 1.05);
+    yield stepRow(large, { rounds: 60 }, 1.05);
+    yield stepRow(small, { rounds: 200, batch: 5, warmUp: 20 });
   } else {
     yield stepRow(large, { rounds: 7, warmUp: 1 });
     yield stepRow(small, { rounds: 20 });
