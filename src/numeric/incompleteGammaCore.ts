@@ -39,19 +39,27 @@ export function logGammaScale(a: number, x: number): number {
  * "Algorithm AS 187".
  */
 export function incompleteGamma(a: number, x: number, withSlope: boolean): void {
+  if (a >= 60.0 && Math.abs(x - a) <= 0.3 * a) {
+    incompleteGammaNear(a, (x - a) / a);
+    return;
+  }
   gammaLogScale = logGammaScale(a, x);
-  if (a >= 60.0 && Math.abs(x - a) <= 0.3 * a) uniform(a, x);
-  else if (x <= Math.max(a + 1.0, 1.1)) series(a, x, withSlope);
+  if (x <= Math.max(a + 1.0, 1.1)) series(a, x, withSlope);
   else fraction(a, x, withSlope);
 }
 
-function uniform(a: number, x: number): void {
-  const mu = (x - a) / a;
+/**
+ * The same at x = a (1 + μ), for a ≥ 60 and |μ| ≤ 0.3: for very large shapes a law is narrower than the spacing
+ * of the numbers x, but not than that of μ.
+ */
+export function incompleteGammaNear(a: number, mu: number): void {
+  const stirlingPart = stirlingSeries(a);
+  gammaLogScale = a * log1pmx(mu) - stirlingPart - HALF_LOG_2PI - 0.5 * Math.log(a);
   const size = Math.sqrt(-2.0 * log1pmx(mu));
   const eta = mu < 0.0 ? -size : size;
   const ratio = size === 0.0 ? 1.0 : mu / eta;
   temme(a, eta, ratio);
-  const stirling = Math.exp(stirlingSeries(a));
+  const stirling = Math.exp(stirlingPart);
   const bell = 0.5 * SQRT_2PI * Math.sqrt(a) * erfcx(size * Math.sqrt(0.5 * a));
   gammaSide = mu < 0.0 ? 0.0 : 1.0;
   gammaTail = stirling * (mu < 0.0 ? bell - temmeSum : bell + temmeSum);

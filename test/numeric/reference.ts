@@ -1,6 +1,6 @@
 import { readdirSync, readFileSync } from 'node:fs';
 import { join } from 'node:path';
-import { overflow, score } from './ulp.js';
+import { overflow, score, ulp32 } from './ulp.js';
 
 /** One reference value: float32-exact arguments, and the value that they give, rounded to double. */
 export interface Point {
@@ -23,7 +23,7 @@ export function readReference(group: string): Map<string, readonly Point[]> {
   );
 }
 
-type Formula = (...args: number[]) => number;
+export type Formula = (...args: number[]) => number;
 
 /** All functions that the files of src/numeric export, families apart, by name. */
 export async function numericFunctions(): Promise<Map<string, Formula>> {
@@ -40,13 +40,20 @@ export async function numericFunctions(): Promise<Map<string, Formula>> {
 
 /**
  * The worst of a function's errors in float32 units, and where it is: after one rounding to float32, or of the
- * double itself (except where it overflows float32).
+ * double itself (except where it overflows float32). `terms` gives the size of the terms whose sum crosses zero
+ * in the interior of the domain, for a function that does: 2^-50 of it is no error.
  */
-export function worst(formula: Formula, points: readonly Point[], rounded: boolean) {
+export function worst(
+  formula: Formula,
+  points: readonly Point[],
+  rounded: boolean,
+  terms: Formula = () => 0,
+) {
   let result = { error: 0, args: [] as readonly number[], got: NaN, exact: NaN };
   for (const { args, exact } of points) {
     const got = formula(...args);
-    const error = score(rounded || Math.abs(exact) >= overflow ? Math.fround(got) : got, exact);
+    const allowed = (2 ** -50 * terms(...args)) / ulp32(exact);
+    const error = score(rounded || Math.abs(exact) >= overflow ? Math.fround(got) : got, exact) - allowed;
     if (error > result.error) result = { error, args, got, exact };
   }
   return result;

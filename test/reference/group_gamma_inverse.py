@@ -33,6 +33,7 @@ def tables():
         return log_quantile(a, l, log(1 - exp(l)))
 
     logs = [(shape(d), -d.log_uniform(1e-30, 1e4)) for d in [Draws('log gamma quantile')] for _ in range(220)]
+    logs += [(a, l) for a in (60.0, 300.0) for l in (-1e3, -2400.0, -2.5e4)]
     logs += [(a, l) for a in (1e-3, 0.5, 3.0, 1e3) for l in fence(-log(2), -1e-10, -1e4, steps=(0, 1, 8))]
     return {
         'gammaPInverse': (p_point, shares, 60),

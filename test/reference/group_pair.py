@@ -46,4 +46,10 @@ def tables():
     eights = [(a, b) for a in fence(7, 8, 9, steps=(0, 1)) for b in (1e-30, 1e-3, 0.7, 7.5, 300.0, 1e30)]
     add('digammaDifference', lambda a, b: digamma(a + b) - digamma(a), mixed, corners, tens, eights)
     add('digammaDifference_b', lambda a, b: polygamma(1, a + b), mixed, corners, tens, eights)
+
+    def small_step(d):
+        return d.positive(), d.uniform(0, 1) if d.random.random() < 0.5 else d.log_uniform(1e-44, 1)
+
+    eights = [(b, a) for b in fence(1.4616, 7, 8, steps=(0, 1, 8)) for a in (1e-30, 1e-3, 0.7, 1.0)]
+    add('logGammaDifference', lambda b, a: loggamma(b + a) - loggamma(b), small_step, eights)
     return tables
