@@ -1,6 +1,14 @@
 import * as tf from '@tensorflow/tfjs';
 import { ParameterError, ShapeError } from '../errors.js';
-import { describe, requireTensor, shapeText } from '../tensor/checks.js';
+import { valuesAreChecked } from '../tensor/backend.js';
+import {
+  describe,
+  flatten,
+  type NestedNumbers,
+  positionText,
+  requireTensor,
+  shapeText,
+} from '../tensor/checks.js';
 
 /** Observed values some of which are missing. */
 export interface Masked {
@@ -19,7 +27,8 @@ export interface Masked {
  *
  * @param values - the observed values, `[rows, …]`
  * @param mask - true or 1 where observed, false or 0 where missing
- * @throws ParameterError when either is not a tensor; ShapeError when the shapes do not fit.
+ * @throws ParameterError when either is not a tensor, or the mask holds something other than 0 and 1;
+ *   ShapeError when the shapes do not fit.
  * @example
  * ```ts
  * import * as tf from '@tensorflow/tfjs';
@@ -40,7 +49,19 @@ export function masked(values: tf.Tensor, mask: tf.Tensor): Masked {
       `masked: mask must be [rows] or have the shape of values, ${shapeText(values.shape)}; got ${shapeText(mask.shape)}; reshape the mask`,
     );
   }
+  if (valuesAreChecked()) requireZerosAndOnes(mask);
   return { values, mask };
+}
+
+/** A mask with weights in it would be rounded, and not the same way on every backend. */
+function requireZerosAndOnes(mask: tf.Tensor): void {
+  const data = mask.dataSync();
+  for (let i = 0; i < data.length; i++) {
+    if (data[i] === 0 || data[i] === 1) continue;
+    throw new ParameterError(
+      `masked: mask must hold 0 and 1 only; got ${data[i]} at ${positionText(i, mask.shape)}; compare it first, for example with tf.greater(mask, 0.5)`,
+    );
+  }
 }
 
 /** Whether a data value is masked. */
@@ -55,6 +76,8 @@ export function splitMasked(
   value: unknown,
 ): { values: tf.Tensor; mask?: tf.Tensor } {
   if (isMasked(value)) {
+    requireTensor(where, `the values of ${name}`, value.values);
+    requireTensor(where, `the mask of ${name}`, value.mask);
     const mask = tf.cast(value.mask, 'bool');
     const spread =
       mask.shape.length === value.values.shape.length ? mask : spreadRows(mask, value.values.shape);
@@ -64,7 +87,13 @@ export function splitMasked(
     requireTensor(where, name, value);
     return { values: value };
   }
-  if (typeof value === 'number' || Array.isArray(value) || ArrayBuffer.isView(value)) {
+  if (Array.isArray(value)) {
+    // Rows may be typed arrays. Not left to tf.tensor, which reads ragged rows as if they were regular.
+    const rows = value.map((row) => (ArrayBuffer.isView(row) ? Array.from(row as Float32Array) : row));
+    const { data, shape } = flatten(where, name, rows as NestedNumbers);
+    return { values: tf.tensor(data, shape) };
+  }
+  if (typeof value === 'number' || ArrayBuffer.isView(value)) {
     return { values: tf.tensor(value as tf.TensorLike) };
   }
   throw new ParameterError(

@@ -1,7 +1,7 @@
 import * as tf from '@tensorflow/tfjs';
 import type { Distribution } from '../distributions/distribution.js';
 import { isProduct } from '../distributions/product.js';
-import { ModelError, ShapeError } from '../errors.js';
+import { LeadlineError, ModelError, ShapeError } from '../errors.js';
 import type { Stream } from '../random/stream.js';
 import { describe, shapeText } from '../tensor/checks.js';
 import type { DataValue } from './data.js';
@@ -83,6 +83,11 @@ export class Pass {
           `${this.#where}: '${name}' must have a leading axis of rows; got a scalar; wrap it as [value]`,
         );
       }
+      if (rows === 0) {
+        throw new ShapeError(
+          `${this.#where}: '${name}' must have at least one row; got shape ${shapeText(values.shape)}; skip empty batches`,
+        );
+      }
       this.#rows ??= rows;
       if (rows !== this.#rows) {
         throw new ShapeError(
@@ -128,10 +133,24 @@ export class Pass {
           : undefined,
     });
     const rows = this.dataRows * (expand ? this.#draws : 1);
-    const distribution = requireRows(this.#where, node, node.conditional!(values), rows);
+    const distribution = requireRows(this.#where, node, this.#call(node, values), rows);
     const own = distribution.arrayShape[0];
     const shared = own === undefined || (own === 1 && rows !== 1);
     return { distribution, rows: shared ? 'shared' : expand ? 'expanded' : 'data', reads };
+  }
+
+  /** Runs a node's conditional; an error of this library inside it then says which node's it was. */
+  #call(node: ModelNode, values: Record<string, tf.Tensor>): unknown {
+    try {
+      return node.conditional!(values);
+    } catch (error) {
+      if (error instanceof LeadlineError && !error.message.startsWith(`${this.#where}: `)) {
+        const plain = error.message;
+        error.message = `${this.#where}: in the conditional of '${node.name}': ${plain}`;
+        if (error.stack) error.stack = error.stack.replace(plain, () => error.message);
+      }
+      throw error;
+    }
   }
 
   #read(name: string, expand: boolean): tf.Tensor {

@@ -166,4 +166,52 @@ describe('wrong use', () => {
       "logJoint: 'x' must have points of shape [], as its normal has; got [1]; reshape the data, or fold another number of axes with product(d, axes)",
     );
   });
+
+  test('nested numbers must be regular and masks zeros and ones, and both alive', () => {
+    const model = directed().observed('x', () => product(normal({ mean: [0, 0], sd: 1 })));
+    const message = (x: unknown) => text(() => model.logJoint({ x: any(x) }))?.[1];
+    expect(message([[1, 2], [3]])).toBe(
+      'logJoint: x must be a regular nested array of shape [2, 2]; got an array of 1 at depth 1; make every row equally long',
+    );
+    expect(message([[1, 'a']])).toBe("logJoint: x must hold numbers; got the string 'a'; mend the array");
+    expect(message(tf.zeros([0, 2]))).toBe(
+      "logJoint: 'x' must have at least one row; got shape [0, 2]; skip empty batches",
+    );
+    expect(model.logJoint({ x: any([new Float32Array(2), new Float32Array(2)]) }).shape).toEqual([2]);
+    expect(
+      text(() =>
+        masked(
+          tf.zeros([2, 2]),
+          tf.tensor2d([
+            [1, 0],
+            [1, 0.5],
+          ]),
+        ),
+      ),
+    ).toEqual([
+      ParameterError,
+      'masked: mask must hold 0 and 1 only; got 0.5 at [1, 1]; compare it first, for example with tf.greater(mask, 0.5)',
+    ]);
+    expect(text(() => masked(tf.zeros([1]), tf.tensor1d([Number.NaN])))?.[1]).toMatch(/got NaN at \[0\]/);
+    expect(masked(tf.zeros([2]), tf.tensor1d([true, false], 'bool')).mask.dtype).toBe('bool');
+    const gone = masked(tf.zeros([1, 2]), tf.ones([1]));
+    gone.values.dispose();
+    expect(message(gone)).toBe(
+      'logJoint: the values of x must be alive; got a disposed tensor of shape [1, 2]; keep it with tf.keep(…) or use it inside the same tf.tidy',
+    );
+  });
+
+  test('an error inside a conditional says whose it was, and keeps its class', () => {
+    const model = directed()
+      .given('u')
+      .observed('x', ({ u }) => product(normal({ mean: u, sd: 1 })));
+    expect(text(() => model.logJoint({ u: [[Number.NaN]], x: [[0]] }))).toEqual([
+      ParameterError,
+      "logJoint: in the conditional of 'x': normal: mean must be finite; got NaN at [0, 0] (shape [1, 1]); mend the value, or look for a division or logarithm that made it",
+    ]);
+    const own = directed().observed('x', () => {
+      throw new TypeError('mine');
+    });
+    expect(() => own.logJoint({ x: [[0]] })).toThrow(new TypeError('mine'));
+  });
 });
