@@ -1,8 +1,9 @@
 import * as tf from '@tensorflow/tfjs';
 import { closedKl } from '../divergence/closedForms.js';
-import { DivergenceError, GradientError } from '../errors.js';
+import { DivergenceError, GradientError, ShapeError } from '../errors.js';
 import type { ModelNode } from '../models/node.js';
 import type { Evaluated, Pass } from '../models/pass.js';
+import { shapeText } from '../tensor/checks.js';
 
 /** How the divergence of a latent is computed. */
 export type DivergenceChoice = 'closed' | 'sampled';
@@ -30,6 +31,7 @@ export function latentDivergence(
   choice: DivergenceChoice | undefined,
 ): tf.Tensor {
   const { name, model, recognizer } = pair;
+  requireSamePoints(name, recognizer.distribution.pointShape, model.distribution.pointShape);
   const formula = choice === 'sampled' ? undefined : closedKl(recognizer.distribution, model.distribution);
   const looped = [...model.reads].find((read) => descendants.has(read));
   if (choice === 'closed') {
@@ -51,6 +53,14 @@ export function latentDivergence(
   const logQ = pass.logDensity(pair.recognizerNode, recognizer);
   const logP = pass.logDensity(pair.modelNode, model);
   return pass.meanOverDraws(tf.sub(logQ, logP));
+}
+
+/** A closed form would broadcast a prior of one coordinate over all those of the recognizer, without a word. */
+function requireSamePoints(name: string, q: readonly number[], p: readonly number[]): void {
+  if (q.length === p.length && q.every((size, i) => size === p[i])) return;
+  throw new ShapeError(
+    `elbo: '${name}' must have points of one shape; got ${shapeText(p)} in the model and ${shapeText(q)} in the recognizer; give both the same sizes`,
+  );
 }
 
 /** Both conditionals over the same rows: one that was evaluated per data point is evaluated per draw where needed. */

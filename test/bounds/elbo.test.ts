@@ -529,6 +529,23 @@ describe('wrong use', () => {
       DivergenceError,
       "elbo: the divergence of 'z' must have a closed form; got (product<logistic>, product<normal>); pass divergence: { z: 'sampled' }, or registerKl(…)",
     );
+    // A closed form would spread this prior over both coordinates.
+    for (const divergence of ['closed', 'sampled'] as const) {
+      refuse(
+        () =>
+          elbo(
+            directed()
+              .latent('z', () => product(normal({ mean: [0], sd: 1 })))
+              .observed('x', ({ z }) => product(normal({ mean: z, sd: 1 }))),
+            directed()
+              .given('x')
+              .latent('z', ({ x: seen }) => product(normal({ mean: seen, sd: 1 }))),
+            { divergence },
+          ).estimate({ x: [[1, 2]] }, stream(1)),
+        ShapeError,
+        "elbo: 'z' must have points of one shape; got [1] in the model and [2] in the recognizer; give both the same sizes",
+      );
+    }
     refuse(
       () =>
         elbo(
