@@ -10,7 +10,7 @@ import {
   type SupportName,
   unitInterval,
 } from '../support/support.js';
-import { describe, type ParameterValue } from '../tensor/checks.js';
+import { describe, type ParameterValue, requireKnownKeys } from '../tensor/checks.js';
 import type { Formula } from '../tensor/formula.js';
 import type {
   Distribution,
@@ -100,9 +100,26 @@ export interface CommonParts {
   readonly parameters: ParameterForms;
 }
 
-/** Checks the common part of a definition. */
-export function readDefinition(where: string, definition: FamilyDefinition<string, string>): CommonParts {
-  const { family, support = 'real', parameters } = definition ?? {};
+/** Checks the common part of a definition; `others` are the keys it may have beside the common ones. */
+export function readDefinition(
+  where: string,
+  definition: FamilyDefinition<string, string>,
+  others: readonly string[],
+): CommonParts {
+  // The compiler lets keys it does not know pass here, since it infers the definition's own type.
+  requireKnownKeys(where, definition, [
+    'family',
+    'support',
+    'parameters',
+    'mean',
+    'variance',
+    'mode',
+    'entropy',
+    'cdf',
+    'quantile',
+    ...others,
+  ]);
+  const { family, support = 'real', parameters } = definition;
   if (typeof family !== 'string' || family === '' || /[|<>]/.test(family)) {
     throw new ParameterError(
       `${where}: family must be a name without |, < and >; got ${describe(family)}; pass for example family: 'triangle'`,

@@ -68,7 +68,7 @@ export function implicitFamily<
   definition: Definition & ImplicitDefinition<Family, Names>,
 ): FamilyFactory<Family, 'pathwise', Names, Definition> {
   const where = 'implicitFamily';
-  const { support, names, parameters } = readDefinition(where, definition);
+  const { support, names, parameters } = readDefinition(where, definition, ['logDensity', 'draw']);
   const { family } = definition;
   if (typeof definition.draw !== 'function') {
     throw new ParameterError(

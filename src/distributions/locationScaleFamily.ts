@@ -79,11 +79,12 @@ export function locationScaleFamily<
   definition: Definition & LocationScaleDefinition<Family>,
 ): FamilyFactory<Family, 'pathwise', 'location' | 'scale', Definition> {
   const where = 'locationScaleFamily';
-  const { family } = definition ?? {};
-  const { support, parameters } = readDefinition(where, {
-    family,
-    parameters: { location: 'real', scale: 'positive' },
-  });
+  const { support, parameters } = readDefinition(
+    where,
+    { ...definition, parameters: { location: 'real', scale: 'positive' } },
+    ['logDensity', 'draw'],
+  );
+  const { family } = definition;
   const density = standard(`${family}.logDensity`, definition.logDensity);
   if (typeof definition.draw !== 'function') {
     throw new ParameterError(

@@ -60,7 +60,7 @@ export function quantileFamily<
   definition: Definition & QuantileDefinition<Family, Names>,
 ): FamilyFactory<Family, 'pathwise', Names, Definition> {
   const where = 'quantileFamily';
-  const { support, names, parameters } = readDefinition(where, definition);
+  const { support, names, parameters } = readDefinition(where, definition, ['logDensity']);
   const { family } = definition;
   const { summaries, functions } = closedFormulas(family, names, definition);
   const quantile = formulaFrom(`${family}.quantile`, ['p', ...names], definition.quantile);

@@ -1,10 +1,11 @@
 import * as tf from '@tensorflow/tfjs';
+import { ParameterError } from '../errors.js';
 import { broadcastShapes, sizeOf } from '../kernels/layout.js';
 import { type NoiseKind, noise } from '../random/noise.js';
 import { requireStream, type Stream } from '../random/stream.js';
 import type { Support } from '../support/support.js';
 import { applyFormula } from '../tensor/apply.js';
-import { requireCount, requireTensor } from '../tensor/checks.js';
+import { describe, requireCount, requireTensor } from '../tensor/checks.js';
 import { floatsOf, tensorOf } from '../tensor/engine.js';
 import { type Formula, kernel } from '../tensor/formula.js';
 import { detachedOperand, type Operand } from '../tensor/operand.js';
@@ -136,8 +137,15 @@ function member<Family extends string, R extends Route>(
     },
     logDensity: (x: tf.Tensor) => score(x, 0),
     foldedLogDensity: score,
-    parameter: (name: string) =>
-      applyFormula(`${family}.parameter`, identity, [operands[name]!], { shape: operands[name]!.shape }),
+    parameter: (name: string) => {
+      const operand = Object.hasOwn(operands, name) ? operands[name] : undefined;
+      if (!operand) {
+        throw new ParameterError(
+          `${family}.parameter: name must be one of ${Object.keys(operands).join(', ')}; got ${describe(name)}; ask for the form that the formulas read`,
+        );
+      }
+      return applyFormula(`${family}.parameter`, identity, [operand], { shape: operand.shape });
+    },
     detached: () =>
       member(
         definition,

@@ -272,6 +272,23 @@ describe('wrong definitions have one clear message each', () => {
       "locationScaleFamily: mean of f must be a finite number, the standard member's; got NaN; leave it out where there is none",
     ],
     [
+      () => byStandard({ location: 0, scale: 1 }).parameter(any('sd')),
+      "logisticByStandard.parameter: name must be one of location, scale; got the string 'sd'; ask for the form that the formulas read",
+    ],
+    [
+      () =>
+        quantileFamily(
+          any({
+            family: 'f',
+            parameters: { a: 'positive' },
+            logDensity: (z: tf.Tensor) => z,
+            quantile: (p: tf.Tensor) => p,
+            cfd: (z: tf.Tensor) => z,
+          }),
+        ),
+      "quantileFamily: options must be among family, support, parameters, mean, variance, mode, entropy, cdf, quantile, logDensity; got 'cfd'; remove or rename it",
+    ],
+    [
       () => byStandard({ location: 0, scale: -1 }),
       'logisticByStandard: scale must be positive; got -1; mend the value, or look for a division or logarithm that made it',
     ],
