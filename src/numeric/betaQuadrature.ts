@@ -38,19 +38,15 @@ export function betaQuadrature(a: number, b: number, x: number, y: number, lambd
   for (let i = 0; i < 24; i++) {
     const k = i < 12 ? i : i - 12;
     const v = half * (i < 12 ? 1.0 - NODES[k]! : 1.0 + NODES[k]!);
-    let phi = 0.0;
-    let logY = 0.0;
-    if (x <= 0.5) {
-      // (1 − t) / y = 1 / (1 + m), t / x = e^−v / (1 + m), m = x (e^−v − 1).
-      const m = x * Math.expm1(-v);
-      logY = -Math.log1p(m);
-      phi = -v * lambda - n * (x * exponentialRemainder(-v) + log1pmx(m));
-    } else {
-      // The same with e^−v taken out of 1 + m, for y small: 1 + m = e^−v (1 + y (e^v − 1)).
-      const m = y * Math.expm1(v);
-      logY = v - Math.log1p(m);
-      phi = -v * lambda - n * (y * exponentialRemainder(v) + log1pmx(m));
-    }
+    // For x ≤ ½, (1 − t) / y = 1 / (1 + m) and t / x = e^−v / (1 + m) with m = x (e^−v − 1). For y small the same
+    // with e^−v taken out of 1 + m: 1 + m = e^−v (1 + y (e^v − 1)).
+    const u = x <= 0.5 ? -v : v;
+    const share = x <= 0.5 ? x : y;
+    const bend = share * exponentialRemainder(u);
+    const m = share * u + bend;
+    const rest = log1pmx(m);
+    const phi = -v * lambda - n * (bend + rest);
+    const logY = (x <= 0.5 ? 0.0 : v) - (m + rest);
     const weight = WEIGHTS[k]! * Math.exp(phi);
     sum += weight;
     sumA += weight * (logY - v);

@@ -1,18 +1,23 @@
 /**
  * exp(x) − 1 − x, to full relative accuracy; cancels to nothing near zero when written out.
- * Taylor series below 0.5 in magnitude, where twenty terms reach the last place; direct above.
+ * Below 0.5 in magnitude the Taylor polynomial to x¹⁶, which reaches the last place; direct above.
  */
 export function exponentialRemainder(x: number): number {
-  if (x === Infinity) return x;
-  if (!(Math.abs(x) <= 0.5)) return Math.expm1(x) - x;
-  let term = 0.5 * x * x;
-  let sum = 0.0;
-  let n = 3.0;
-  while (Math.abs(term) > 1e-18 * Math.abs(sum)) {
-    sum += term;
-    term *= x / n;
-    n += 1.0;
-    if (n > 25.0) break;
-  }
-  return sum;
+  if (Math.abs(x) > 0.5) return Math.expm1(x) - x;
+  let p = 1.0 / 20922789888000.0;
+  p = 1.0 / 1307674368000.0 + x * p;
+  p = 1.0 / 87178291200.0 + x * p;
+  p = 1.0 / 6227020800.0 + x * p;
+  p = 1.0 / 479001600.0 + x * p;
+  p = 1.0 / 39916800.0 + x * p;
+  p = 1.0 / 3628800.0 + x * p;
+  p = 1.0 / 362880.0 + x * p;
+  p = 1.0 / 40320.0 + x * p;
+  p = 1.0 / 5040.0 + x * p;
+  p = 1.0 / 720.0 + x * p;
+  p = 1.0 / 120.0 + x * p;
+  p = 1.0 / 24.0 + x * p;
+  p = 1.0 / 6.0 + x * p;
+  p = 1.0 / 2.0 + x * p;
+  return x * x * p;
 }
