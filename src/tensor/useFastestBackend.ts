@@ -13,7 +13,8 @@ export interface BackendOptions {
 
 /**
  * Switches tfjs to the fastest backend that a plain CPU has: wasm where it is installed, else cpu. Importing
- * the library never touches the backend; this does, on request.
+ * the library never touches the backend; this does, on request. The wasm backend of tfjs 4.22 has no gradient
+ * for the filters of two-dimensional (and so of one-dimensional) convolutions: train those on the cpu backend.
  *
  * @param options - `loadWasm` for bundled pages
  * @returns the name of the backend in use

@@ -1,5 +1,5 @@
 import * as tf from '@tensorflow/tfjs';
-import { TrainingError } from '../errors.js';
+import { EnvironmentError, TrainingError } from '../errors.js';
 import type { Stream } from '../random/stream.js';
 import { shapeText } from '../tensor/checks.js';
 import { findFlaw } from './diagnose.js';
@@ -135,6 +135,14 @@ export class GradientStep<Data> {
       if (cause instanceof Error && /Cannot find a connection|to be trainable/.test(cause.message)) {
         throw new TrainingError(
           `${where}: bound must depend on a trainable variable; got none; use your tf.Variables inside the model's conditionals, and detach() nothing on the way`,
+          { cause },
+        );
+      }
+      const [, kernel, backend] =
+        /Kernel '(.+?)' not registered for backend '(.+?)'/.exec((cause as Error)?.message ?? '') ?? [];
+      if (kernel) {
+        throw new EnvironmentError(
+          `${where}: the backend must have every operation that the model and its gradient use; got ${backend}, which lacks ${kernel}; call await tf.setBackend('cpu') before the model is built`,
           { cause },
         );
       }

@@ -3,6 +3,7 @@ import { beforeAll, describe, expect, test } from 'vitest';
 import {
   bernoulli,
   directed,
+  EnvironmentError,
   elbo,
   head,
   multilayerPerceptron,
@@ -151,6 +152,37 @@ describe('seedWeights', () => {
     expect(seen[0]!).toBeLessThan(-40);
     // Two equally likely pictures: the evidence is −log 2, and the bound approaches it.
     expect(seen.at(-1)!).toBeGreaterThan(-6);
+  });
+
+  test('a backend that cannot train a layer is named, with the way out', async () => {
+    await import('@tensorflow/tfjs-backend-wasm');
+    await tf.setBackend('wasm');
+    try {
+      const encoder = build();
+      seedWeights(encoder, stream(70));
+      const model = directed()
+        .latent('z', () => product(normal({ mean: tf.zeros([2]), sd: 1 })))
+        .observed('x', ({ z }) => product(normal({ mean: tf.sum(z), sd: tf.ones([8, 8, 1]) }), 3));
+      const recognizer = directed()
+        .given('x')
+        .latent('z', ({ x }) => {
+          const [mean, logVariance] = tf.split(encoder.predict(x) as tf.Tensor2D, 2, 1);
+          return product(normal({ mean: mean!, logVariance: logVariance! }));
+        });
+      const run = train({
+        bound: elbo(model, recognizer),
+        data: { x: tf.zeros([4, 8, 8, 1]) },
+        optimizer: tf.train.sgd(0.1),
+        stream: stream(71),
+      });
+      await expect(run.next()).rejects.toThrow(
+        new EnvironmentError(
+          "train: the backend must have every operation that the model and its gradient use; got wasm, which lacks Conv2DBackpropFilter; call await tf.setBackend('cpu') before the model is built",
+        ),
+      );
+    } finally {
+      await tf.setBackend('cpu');
+    }
   });
 });
 
