@@ -1,6 +1,6 @@
 import * as tf from '@tensorflow/tfjs';
 import { binary } from '../support/support.js';
-import { choose, composedSigmoid, composedSoftplus } from '../tensor/composedMath.js';
+import { choose, composedAbs, composedSigmoid, composedSoftplus, stepwise } from '../tensor/composedMath.js';
 import { kernel } from '../tensor/formula.js';
 import { logOdds } from '../tensor/transforms.js';
 import type { Distribution, HasCdf, HasEntropy, HasMean, HasMode, HasVariance } from './distribution.js';
@@ -51,9 +51,9 @@ const make = scalarFamily({
   summaries: {
     mean: kernel('bernoulliMean', (l) => composedSigmoid(l!)),
     variance: kernel('bernoulliVariance', (l) => tf.mul(composedSigmoid(l!), composedSigmoid(tf.neg(l!)))),
-    mode: kernel('bernoulliMode', (l) => tf.cast(tf.greater(l!, 0), 'float32')),
+    mode: kernel('bernoulliMode', (l) => stepwise(l!, (v) => tf.greater(v, 0))),
     entropy: kernel('bernoulliEntropy', (l) => {
-      const a = tf.abs(l!);
+      const a = composedAbs(l!);
       return tf.add(composedSoftplus(tf.neg(a)), tf.mul(a, composedSigmoid(tf.neg(a))));
     }),
   },

@@ -8,7 +8,8 @@ import { categories } from '../support/support.js';
 import { valuesAreChecked } from '../tensor/backend.js';
 import { positionText, requireCount, requireTensor, shapeText } from '../tensor/checks.js';
 import { usesComposedForm } from '../tensor/composed.js';
-import { composedExp, composedLogSoftmax } from '../tensor/composedMath.js';
+import { composedExp, composedLogSoftmax, when } from '../tensor/composedMath.js';
+import { detach } from '../tensor/detach.js';
 import { floatsOf, tensorOf } from '../tensor/engine.js';
 import { runHostOperation } from '../tensor/hostOperation.js';
 import { composedTensor, detachedOperand, type Operand, operandData, rawTensor } from '../tensor/operand.js';
@@ -165,7 +166,7 @@ function member(operand: Operand, k: number): Categorical {
         return tf.tidy(() => {
           const logs = logProbabilities();
           return tf.neg(
-            tf.sum(tf.where(tf.less(logs, -200), tf.zerosLike(logs), tf.mul(composedExp(logs), logs)), -1),
+            tf.sum(when(tf.less(logs, -200), tf.zerosLike(logs), tf.mul(composedExp(logs), logs)), -1),
           );
         });
       }
@@ -223,7 +224,7 @@ function composedLogDensity(x: tf.Tensor, operand: Operand, k: number, shape: nu
   return tf.tidy(() => {
     const logP = composedLogSoftmax(composedTensor(operand));
     const full = tf.broadcastTo(logP, [...shape, k]);
-    const points = tf.broadcastTo(x, shape);
+    const points = tf.broadcastTo(detach(x), shape);
     const hot = tf.equal(tf.expandDims(points, -1), tf.range(0, k));
     const picked = tf.sum(tf.where(hot, full, tf.zerosLike(full)), -1);
     return tf.where(tf.any(hot, -1), picked, tf.fill(shape, Number.NEGATIVE_INFINITY));

@@ -1,6 +1,6 @@
 import * as tf from '@tensorflow/tfjs';
 import { positive } from '../support/support.js';
-import { choose } from '../tensor/composedMath.js';
+import { choose, composedLog1p, stepwise } from '../tensor/composedMath.js';
 import { kernel } from '../tensor/formula.js';
 import { exponentiated, reciprocal } from '../tensor/transforms.js';
 import type {
@@ -53,12 +53,14 @@ const make = scalarFamily({
   summaries: {
     mean: { ...kernel('reciprocal', (r) => tf.div(1, r!)), parameters: ['rate'] },
     variance: kernel('exponentialVariance', (r) => tf.div(1, tf.square(r!))),
-    mode: kernel('exponentialMode', (r) => tf.zerosLike(r!)),
+    mode: kernel('exponentialMode', (r) => stepwise(r!, tf.zerosLike)),
     entropy: kernel('exponentialEntropy', (r) => tf.sub(1, tf.log(r!))),
   },
   functions: {
-    cdf: kernel('exponentialCdf', (x, r) => tf.neg(tf.expm1(tf.neg(tf.mul(r!, tf.relu(x!)))))),
-    quantile: kernel('exponentialQuantile', (p, r) => tf.neg(tf.div(tf.log1p(tf.neg(p!)), r!))),
+    cdf: kernel('exponentialCdf', (x, r) =>
+      choose(tf.greaterEqual(x!, 0), tf.neg(tf.expm1(tf.neg(tf.mul(r!, x!)))), 0),
+    ),
+    quantile: kernel('exponentialQuantile', (p, r) => tf.neg(tf.div(composedLog1p(tf.neg(p!)), r!))),
   },
 });
 

@@ -1,7 +1,7 @@
 import * as tf from '@tensorflow/tfjs';
 import { real } from '../support/support.js';
 import type { ParameterValue } from '../tensor/checks.js';
-import { composedExp } from '../tensor/composedMath.js';
+import { composedAbs, composedExp, when } from '../tensor/composedMath.js';
 import { kernel } from '../tensor/formula.js';
 import { exponentiated } from '../tensor/transforms.js';
 import type {
@@ -47,7 +47,7 @@ const make = scalarFamily({
     },
   },
   logDensity: kernel('laplaceLogDensity', (x, l, s) =>
-    tf.neg(tf.add(tf.div(tf.abs(tf.sub(x!, l!)), s!), tf.log(tf.mul(2, s!)))),
+    tf.neg(tf.add(tf.div(composedAbs(tf.sub(x!, l!)), s!), tf.log(tf.mul(2, s!)))),
   ),
   // The same map of standard noise to a draw as the normal's: location + scale · noise.
   draw: {
@@ -66,13 +66,14 @@ const make = scalarFamily({
   functions: {
     cdf: kernel('laplaceCdf', (x, l, s) => {
       const z = tf.div(tf.sub(x!, l!), s!);
-      const tail = tf.mul(0.5, composedExp(tf.neg(tf.abs(z))));
-      return tf.where(tf.less(z, 0), tail, tf.sub(1, tail));
+      const below = tf.less(z, 0);
+      const tail = tf.mul(0.5, composedExp(when(below, z, tf.neg(z))));
+      return when(below, tail, tf.sub(1, tail));
     }),
     quantile: kernel('laplaceQuantile', (p, l, s) => {
-      const low = tf.log(tf.mul(2, tf.minimum(p!, 0.5)));
-      const high = tf.neg(tf.log(tf.mul(2, tf.minimum(tf.sub(1, p!), 0.5))));
-      return tf.add(l!, tf.mul(s!, tf.add(low, high)));
+      const below = tf.less(p!, 0.5);
+      const log = tf.log(tf.mul(2, when(below, p!, tf.sub(1, p!))));
+      return tf.add(l!, tf.mul(s!, when(below, log, tf.neg(log))));
     }),
   },
 });

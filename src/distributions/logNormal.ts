@@ -1,7 +1,7 @@
 import * as tf from '@tensorflow/tfjs';
 import { positive } from '../support/support.js';
 import type { ParameterValue } from '../tensor/checks.js';
-import { choose, composedExp } from '../tensor/composedMath.js';
+import { choose, composedExp, when } from '../tensor/composedMath.js';
 import { composedNormalCdf, composedNormalQuantile } from '../tensor/composedNormal.js';
 import { kernel } from '../tensor/formula.js';
 import { exponentiated } from '../tensor/transforms.js';
@@ -35,7 +35,7 @@ export interface LogNormal
 }
 
 const halfLogTwoPi = 0.5 * Math.log(2 * Math.PI);
-const safe = (x: tf.Tensor): tf.Tensor => tf.where(tf.greater(x, 0), x, tf.onesLike(x));
+const safe = (x: tf.Tensor): tf.Tensor => when(tf.greater(x, 0), x, tf.onesLike(x));
 
 const make = scalarFamily({
   family: 'logNormal',
@@ -62,7 +62,7 @@ const make = scalarFamily({
     mean: kernel('logNormalMean', (l, s) => composedExp(tf.add(l!, tf.mul(0.5, tf.square(s!))))),
     variance: kernel('logNormalVariance', (l, s) => {
       const v = tf.square(s!);
-      return tf.mul(tf.expm1(v), composedExp(tf.add(tf.mul(2, l!), v)));
+      return tf.neg(tf.mul(tf.expm1(tf.neg(v)), composedExp(tf.mul(2, tf.add(l!, v)))));
     }),
     mode: kernel('logNormalMode', (l, s) => composedExp(tf.sub(l!, tf.square(s!)))),
     entropy: kernel('logNormalEntropy', (l, s) => tf.add(tf.add(l!, tf.log(s!)), halfLogTwoPi + 0.5)),

@@ -1,7 +1,7 @@
 import * as tf from '@tensorflow/tfjs';
 import { real } from '../support/support.js';
 import type { ParameterValue } from '../tensor/checks.js';
-import { composedSigmoid, composedSoftplus } from '../tensor/composedMath.js';
+import { composedLogOdds, composedSigmoid, composedSoftplus } from '../tensor/composedMath.js';
 import { kernel } from '../tensor/formula.js';
 import { exponentiated } from '../tensor/transforms.js';
 import type {
@@ -48,7 +48,7 @@ const make = scalarFamily({
   },
   logDensity: kernel('logisticLogDensity', (x, l, s) => {
     const z = tf.div(tf.sub(x!, l!), s!);
-    return tf.neg(tf.add(tf.add(z, tf.mul(2, composedSoftplus(tf.neg(z)))), tf.log(s!)));
+    return tf.neg(tf.add(tf.add(composedSoftplus(z), composedSoftplus(tf.neg(z))), tf.log(s!)));
   }),
   // The same map of standard noise to a draw as the normal's: location + scale · noise.
   draw: {
@@ -66,9 +66,7 @@ const make = scalarFamily({
   },
   functions: {
     cdf: kernel('logisticCdf', (x, l, s) => composedSigmoid(tf.div(tf.sub(x!, l!), s!))),
-    quantile: kernel('logisticQuantile', (p, l, s) =>
-      tf.add(l!, tf.mul(s!, tf.sub(tf.log(p!), tf.log(tf.sub(1, p!))))),
-    ),
+    quantile: kernel('logisticQuantile', (p, l, s) => tf.add(l!, tf.mul(s!, composedLogOdds(p!)))),
   },
 });
 

@@ -1,7 +1,7 @@
 import * as tf from '@tensorflow/tfjs';
 import { poissonDraws } from '../random/noise.js';
 import { count } from '../support/support.js';
-import { choose, composedLogGamma } from '../tensor/composedMath.js';
+import { choose, composedLogGamma, stepwise, when } from '../tensor/composedMath.js';
 import { kernel } from '../tensor/formula.js';
 import { noComposedForm } from '../tensor/noComposedForm.js';
 import { exponentiated } from '../tensor/transforms.js';
@@ -35,7 +35,7 @@ const make = scalarFamily({
   },
   logDensity: kernel('poissonLogDensity', (x, r) => {
     const whole = tf.logicalAnd(tf.greaterEqual(x!, 0), tf.equal(x!, tf.floor(x!)));
-    const safe = tf.where(whole, x!, tf.zerosLike(x!));
+    const safe = when(whole, x!, tf.zerosLike(x!));
     const inside = tf.sub(tf.sub(tf.mul(safe, tf.log(r!)), r!), composedLogGamma(tf.add(safe, 1)));
     return choose(whole, inside, Number.NEGATIVE_INFINITY);
   }),
@@ -43,7 +43,7 @@ const make = scalarFamily({
   summaries: {
     mean: rate,
     variance: rate,
-    mode: kernel('poissonMode', (r) => tf.floor(r!)),
+    mode: kernel('poissonMode', (r) => stepwise(r!, tf.floor)),
   },
   functions: { cdf: kernel('poissonCdf', noComposedForm('poisson.cdf')) },
 });

@@ -4,7 +4,8 @@ import { broadcastShapes, broadcastStrides, forEachBroadcast } from '../kernels/
 import { interval } from '../support/support.js';
 import { valuesAreChecked } from '../tensor/backend.js';
 import { type ParameterValue, positionText } from '../tensor/checks.js';
-import { choose } from '../tensor/composedMath.js';
+import { choose, stepwise } from '../tensor/composedMath.js';
+import { detach } from '../tensor/detach.js';
 import { kernel } from '../tensor/formula.js';
 import { type Operand, operandData } from '../tensor/operand.js';
 import type { Distribution, HasCdf, HasEntropy, HasMean, HasQuantile, HasVariance } from './distribution.js';
@@ -36,13 +37,12 @@ const make = scalarFamily({
   route: 'pathwise',
   support: interval,
   parameters: { lower: { lower: { domain: finite } }, upper: { upper: { domain: finite } } },
-  logDensity: kernel('uniformLogDensity', (x, a, b) =>
-    choose(
-      tf.logicalAnd(tf.greaterEqual(x!, a!), tf.lessEqual(x!, b!)),
-      tf.neg(tf.log(tf.sub(b!, a!))),
-      Number.NEGATIVE_INFINITY,
-    ),
-  ),
+  logDensity: kernel('uniformLogDensity', (x, a, b) => {
+    const inside = tf.logicalAnd(tf.greaterEqual(x!, a!), tf.lessEqual(x!, b!));
+    const value = choose(inside, tf.neg(tf.log(tf.sub(b!, a!))), Number.NEGATIVE_INFINITY);
+    // A point has a gradient, and it is zero.
+    return tf.add(value, stepwise(x!, tf.zerosLike));
+  }),
   draw: { noise: 'uniform', formula: quantile },
   summaries: {
     mean: kernel('uniformMean', (a, b) => tf.mul(0.5, tf.add(a!, b!))),
@@ -50,7 +50,14 @@ const make = scalarFamily({
     entropy: kernel('uniformEntropy', (a, b) => tf.log(tf.sub(b!, a!))),
   },
   functions: {
-    cdf: kernel('uniformCdf', (x, a, b) => tf.clipByValue(tf.div(tf.sub(x!, a!), tf.sub(b!, a!)), 0, 1)),
+    cdf: kernel('uniformCdf', (x, a, b) => {
+      const above = tf.greaterEqual(x!, b!);
+      const inside = tf.logicalAnd(tf.greater(x!, a!), tf.logicalNot(above));
+      return tf.add(
+        choose(inside, tf.div(tf.sub(x!, a!), tf.sub(b!, a!)), 0),
+        tf.cast(detach(above), 'float32'),
+      );
+    }),
     quantile,
   },
   check: requireOrder,

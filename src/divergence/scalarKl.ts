@@ -3,7 +3,14 @@ import type { Distribution } from '../distributions/distribution.js';
 import { isScalar, type ScalarDistribution } from '../distributions/scalarFamily.js';
 import { broadcastShapes } from '../kernels/layout.js';
 import { applyFormula } from '../tensor/apply.js';
-import { composedExp, composedSigmoid, composedSoftplus } from '../tensor/composedMath.js';
+import { composedAbs, composedExp, composedSigmoid, composedSoftplus, when } from '../tensor/composedMath.js';
+import {
+  composedEvenRemainder,
+  composedExpm1,
+  composedExponentialRemainder,
+  composedLog1pmx,
+} from '../tensor/composedRemainders.js';
+import { detach } from '../tensor/detach.js';
 import { type Formula, kernel } from '../tensor/formula.js';
 import { addKl, type ClosedKlPairs } from './registry.js';
 
@@ -28,11 +35,59 @@ function scalar(d: Distribution): ScalarDistribution {
   return d;
 }
 
+/** log(s / t), whose ratio may leave float32 where the logarithms do not. */
+function logRatio(s: tf.Tensor, t: tf.Tensor): tf.Tensor {
+  return tf.sub(tf.log(s), tf.log(t));
+}
+
+/** r − 1 − log r, from r − 1 and log r; from r − 1 alone where r is not small, as then the two nearly agree. */
+function excess(lessOne: tf.Tensor, log: tf.Tensor): tf.Tensor {
+  const small = tf.less(lessOne, -0.5);
+  const rest = tf.neg(composedLog1pmx(when(small, tf.zerosLike(lessOne), lessOne)));
+  return when(small, tf.sub(lessOne, log), rest);
+}
+
+function relativeExcess(s: tf.Tensor, t: tf.Tensor): tf.Tensor {
+  return excess(tf.div(tf.sub(s, t), t), logRatio(s, t));
+}
+
+/** With d = |l − m| / s: in two smooth parts where d is small, written out where they would cancel each other. */
+function composedLaplaceKl(l: tf.Tensor, s: tf.Tensor, m: tf.Tensor, t: tf.Tensor): tf.Tensor {
+  const [gap, ratio] = [tf.sub(l, m), tf.div(s, t)];
+  const u = tf.div(gap, s);
+  const near = tf.less(tf.abs(u), 1);
+  const shift = tf.mul(ratio, composedEvenRemainder(when(near, u, tf.zerosLike(u))));
+  const far = tf.add(tf.div(composedAbs(gap), t), tf.mul(ratio, composedExp(tf.neg(composedAbs(u)))));
+  return when(near, tf.add(relativeExcess(s, t), shift), tf.sub(far, tf.add(1, logRatio(s, t))));
+}
+
+/** r log(r / s) − r + s, written out where the two rates are far apart. */
+function composedPoissonKl(r: tf.Tensor, s: tf.Tensor): tf.Tensor {
+  const near = tf.less(tf.abs(tf.div(tf.sub(s, r), r)), 0.5);
+  const close = tf.mul(r, relativeExcess(when(near, s, r), r));
+  return when(near, close, tf.add(tf.mul(r, logRatio(r, s)), tf.sub(s, r)));
+}
+
 const normalKl = kernel('normalKl', (m, s, n, t) => {
-  const r = tf.square(tf.div(s!, t!));
-  const d = tf.square(tf.div(tf.sub(m!, n!), t!));
-  return tf.mul(0.5, tf.sub(tf.add(r, d), tf.add(1, tf.log(r))));
+  const ratio = tf.div(tf.sub(s!, t!), t!);
+  const spread = excess(tf.mul(ratio, tf.add(2, ratio)), tf.mul(2, logRatio(s!, t!)));
+  return tf.mul(0.5, tf.add(spread, tf.square(tf.div(tf.sub(m!, n!), t!))));
 });
+
+/** By the less likely outcome of the first, as the double-precision formula: see bernoulliKl there. */
+function composedBernoulliKl(logit: tf.Tensor, otherLogit: tf.Tensor): tf.Tensor {
+  const side = detach(tf.sub(1, tf.mul(2, tf.cast(tf.greater(logit, 0), 'float32'))));
+  const [a, b] = [tf.mul(logit, side), tf.mul(otherLogit, side)];
+  const p = composedSigmoid(a);
+  const delta = tf.sub(b, a);
+  const near = tf.less(tf.abs(delta), 1);
+  const held = when(near, delta, tf.zerosLike(delta));
+  const close = tf.add(
+    composedLog1pmx(tf.mul(p, composedExpm1(held))),
+    tf.mul(p, composedExponentialRemainder(held)),
+  );
+  return when(near, close, tf.sub(tf.sub(composedSoftplus(b), composedSoftplus(a)), tf.mul(p, delta)));
+}
 
 /** Registers the closed forms. */
 export function registerScalarKl(): void {
@@ -41,19 +96,12 @@ export function registerScalarKl(): void {
   add('logNormal|logNormal', normalKl);
   add(
     'laplace|laplace',
-    kernel('laplaceKl', (l, s, m, t) => {
-      const gap = tf.abs(tf.sub(l!, m!));
-      const r = tf.div(s!, t!);
-      return tf.sub(
-        tf.add(tf.div(gap, t!), tf.mul(r, composedExp(tf.neg(tf.div(gap, s!))))),
-        tf.add(1, tf.log(r)),
-      );
-    }),
+    kernel('laplaceKl', (l, s, m, t) => composedLaplaceKl(l!, s!, m!, t!)),
   );
   add(
     'uniform|uniform',
     kernel('uniformKl', (a, b, c, d) =>
-      tf.where(
+      when(
         tf.logicalAnd(tf.greaterEqual(a!, c!), tf.lessEqual(b!, d!)),
         tf.sub(tf.log(tf.sub(d!, c!)), tf.log(tf.sub(b!, a!))),
         tf.fill(broadcastShapes('kl', [a!.shape, b!.shape, c!.shape, d!.shape]), Number.POSITIVE_INFINITY),
@@ -62,19 +110,14 @@ export function registerScalarKl(): void {
   );
   add(
     'exponential|exponential',
-    kernel('exponentialKl', (r, s) => {
-      const ratio = tf.div(s!, r!);
-      return tf.sub(ratio, tf.add(1, tf.log(ratio)));
-    }),
+    kernel('exponentialKl', (r, s) => relativeExcess(s!, r!)),
   );
   add(
     'bernoulli|bernoulli',
-    kernel('bernoulliKl', (a, b) =>
-      tf.add(tf.mul(composedSigmoid(a!), tf.sub(a!, b!)), tf.sub(composedSoftplus(b!), composedSoftplus(a!))),
-    ),
+    kernel('bernoulliKl', (a, b) => composedBernoulliKl(a!, b!)),
   );
   add(
     'poisson|poisson',
-    kernel('poissonKl', (r, s) => tf.add(tf.mul(r!, tf.log(tf.div(r!, s!))), tf.sub(s!, r!))),
+    kernel('poissonKl', (r, s) => composedPoissonKl(r!, s!)),
   );
 }

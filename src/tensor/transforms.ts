@@ -1,6 +1,6 @@
 import * as tf from '@tensorflow/tfjs';
 import * as numeric from '../numeric/transforms.js';
-import { composedExp } from './composedMath.js';
+import { composedExp, composedLogOdds } from './composedMath.js';
 import { type KernelName, kernel, type Transform } from './formula.js';
 
 function transform(
@@ -42,9 +42,7 @@ export const reciprocal = transform('reciprocal', numeric.reciprocal, numeric.re
 );
 
 /** A probability to its log odds, log(v / (1 − v)). */
-export const logOdds = transform('logOdds', numeric.logOdds, numeric.logOdds_v, (v) =>
-  tf.sub(tf.log(v), tf.log(tf.sub(1, v))),
-);
+export const logOdds = transform('logOdds', numeric.logOdds, numeric.logOdds_v, (v) => composedLogOdds(v));
 
 /** A probability to its logarithm. */
 export const logarithm = transform('logarithm', numeric.logarithm, numeric.logarithm_v, (v) => tf.log(v));
