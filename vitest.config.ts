@@ -4,7 +4,13 @@ import { defineConfig } from 'vitest/config';
 export default defineConfig({
   resolve: {
     // The examples in the documentation import the package by its name; here they run against the sources.
-    alias: [{ find: /^leadline$/, replacement: fileURLToPath(new URL('src/index.ts', import.meta.url)) }],
+    alias: [
+      { find: /^leadline$/, replacement: fileURLToPath(new URL('src/index.ts', import.meta.url)) },
+      {
+        find: /^leadline\/conformance$/,
+        replacement: fileURLToPath(new URL('src/conformance/index.ts', import.meta.url)),
+      },
+    ],
   },
   test: {
     include: ['test/**/*.test.ts'],

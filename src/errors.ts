@@ -8,6 +8,7 @@ export type ErrorCode =
   | 'stream'
   | 'training'
   | 'checkpoint'
+  | 'law'
   | 'environment';
 
 /**

@@ -3,21 +3,25 @@ import { describe, expect, it } from 'vitest';
 import { createProgram } from './helpers/program.js';
 import { root } from './helpers/repository.js';
 
-const program = createProgram(['src/index.ts']);
+const entries = ['src/index.ts', 'src/conformance/index.ts'];
+const program = createProgram(entries);
 const checker = program.getTypeChecker();
-const file = program.getSourceFile(`${root}src/index.ts`);
-const module = file && checker.getSymbolAtLocation(file);
-if (!file || !module) throw new Error('src/index.ts must be a module with exports');
 
-const values = checker
-  .getExportsOfModule(module)
-  .map((symbol) => ({
-    name: symbol.name,
-    target: symbol.flags & ts.SymbolFlags.Alias ? checker.getAliasedSymbol(symbol) : symbol,
-  }))
-  .filter(({ target }) => target.flags & ts.SymbolFlags.Value);
+function surface(path: string) {
+  const file = program.getSourceFile(`${root}${path}`);
+  const module = file && checker.getSymbolAtLocation(file);
+  if (!file || !module) throw new Error(`${path} must be a module with exports`);
+  const values = checker
+    .getExportsOfModule(module)
+    .map((symbol) => ({
+      name: symbol.name,
+      target: symbol.flags & ts.SymbolFlags.Alias ? checker.getAliasedSymbol(symbol) : symbol,
+    }))
+    .filter(({ target }) => target.flags & ts.SymbolFlags.Value);
+  return { path, file, values };
+}
 
-describe('the public surface', () => {
+describe.each(entries.map(surface))('the public surface of $path', ({ file, values }) => {
   it('holds named exports from other files and nothing else', () => {
     const others = file.statements.filter(
       (statement) =>

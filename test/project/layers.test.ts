@@ -48,6 +48,11 @@ describe('the check of the layers', () => {
     ['src/tensor/lift.ts', "type Kl = import('../divergence/kl.js').Kl;", 'tensor imports from divergence'],
     ['src/numeric/gamma.ts', "import { ShapeError } from '../errors.js';", 'numeric imports from errors.ts'],
     ['src/random/stream.ts', "import { root } from '../../test/errors.js';", 'lies outside the layers'],
+    [
+      'src/index.ts',
+      "export { lawsOfKl } from './conformance/lawsOfKl.js';",
+      'index.ts imports from conformance, an entry point of its own',
+    ],
     ['src/misc/thing.ts', '', 'misc has no place in the order'],
   ])('finds the fault in %s: %s', (path, text, fault) => {
     expect(layerFaults(path, text).join('\n')).toContain(fault);
@@ -80,6 +85,24 @@ describe('the check of packages', () => {
     const text = `import 'seeds/deep'; import '@some/tensors'; import './b.js';
       await import('@some/backend'); await import('node:fs');`;
     expect(packageFaults('src/a.ts', text, brought)).toEqual([]);
+  });
+});
+
+describe('the check of packages that an entry point needs', () => {
+  const brought = {
+    peerDependencies: { 'fast-check': '1', '@some/backend': '1' },
+    peerDependenciesMeta: { 'fast-check': { optional: true }, '@some/backend': { optional: true } },
+  };
+
+  it('lets that entry point alone import it', () => {
+    const text = "import * as fc from 'fast-check';";
+    expect(packageFaults('src/conformance/a.ts', text, brought)).toEqual([]);
+    expect(packageFaults('src/models/a.ts', text, brought)).toEqual([
+      'src/models/a.ts:1: fast-check may not be installed',
+    ]);
+    expect(packageFaults('src/conformance/a.ts', "import '@some/backend';", brought)).toEqual([
+      'src/conformance/a.ts:1: @some/backend may not be installed',
+    ]);
   });
 });
 

@@ -38,6 +38,9 @@ export function layerFaults(path: string, text: string): string[] {
     const rank = target.startsWith('src/') ? layers.indexOf(layerOf(target)) : -1;
     if (rank < 0) return [`${place}: imports ${specifier}, which lies outside the layers`];
     if (rank > own) return [`${place}: ${layers[own]} imports from ${layerOf(target)}, which comes after it`];
+    // What needs an optional package stays behind its own entry point.
+    if (layerOf(target) === 'conformance' && layers[own] !== 'conformance')
+      return [`${place}: ${layers[own]} imports from conformance, an entry point of its own`];
     // These formulas are compiled a second time, by a compiler that knows nothing of the other folders.
     if (layers[own] === 'numeric' && rank !== own)
       return [`${place}: numeric imports from ${layerOf(target)}`];

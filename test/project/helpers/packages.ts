@@ -15,6 +15,9 @@ function packageOf(specifier: string): string {
     .join('/');
 }
 
+/** The optional package that an entry point of its own cannot do without. */
+const needed: Readonly<Record<string, string>> = { conformance: 'fast-check' };
+
 /**
  * The imports of one source file that could fail for a user: packages that the manifest does not bring, and,
  * unless deferred until they are asked for, optional packages and Node's own modules.
@@ -28,6 +31,7 @@ export function packageFaults(path: string, text: string, manifest: Manifest): s
     const name = packageOf(specifier);
     if (name in (manifest.dependencies ?? {})) return [];
     if (!(name in (manifest.peerDependencies ?? {}))) return [`${place}: ${name} is not a dependency`];
+    if (name === needed[path.split('/')[1] ?? '']) return [];
     return optional(name) && !deferred ? [`${place}: ${name} may not be installed`] : [];
   });
 }
