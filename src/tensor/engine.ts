@@ -33,6 +33,24 @@ export function runOnTape(operation: TapeOperation): tf.Tensor {
   });
 }
 
+interface TapeState {
+  readonly state?: {
+    readonly gradientDepth?: number;
+    activeTape?: readonly { readonly saved?: readonly tf.Tensor[] }[] | null;
+  };
+}
+
+/**
+ * Frees what the engine saved for the gradient of a computation that has thrown: it does so itself only
+ * after one that succeeded. Does nothing while a gradient is being computed.
+ */
+export function forgetFailedTape(): void {
+  const { state } = tf.engine() as unknown as TapeState;
+  if (state?.gradientDepth !== 0 || !state.activeTape) return;
+  for (const { saved } of state.activeTape) tf.dispose((saved ?? []) as tf.Tensor[]);
+  state.activeTape = null;
+}
+
 /** A tensor over `values`, which it may keep without copying. */
 export function tensorOf(values: Float32Array | Int32Array, shape: readonly number[]): tf.Tensor {
   const dtype = values instanceof Int32Array ? 'int32' : 'float32';

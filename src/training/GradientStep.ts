@@ -2,6 +2,7 @@ import * as tf from '@tensorflow/tfjs';
 import { EnvironmentError, TrainingError } from '../errors.js';
 import type { Stream } from '../random/stream.js';
 import { shapeText } from '../tensor/checks.js';
+import { forgetFailedTape } from '../tensor/engine.js';
 import { findFlaw } from './diagnose.js';
 import { holdState } from './heldState.js';
 import { requireSlotOrder } from './optimizerState.js';
@@ -111,6 +112,7 @@ export class GradientStep<Data> {
 
   #backward(input: StepInput<Data>): Pass {
     let kept: Pick<Pass, 'value' | 'parts'> | undefined;
+    let made: tf.Scalar | undefined;
     const loss = (): tf.Scalar => {
       const { value, surrogate, parts } = this.#bound.estimate(input.data, input.draws());
       const rows = value.shape[0];
@@ -121,7 +123,8 @@ export class GradientStep<Data> {
       }
       kept = { value: tf.keep(value), parts };
       for (const { term } of listParts(parts)) tf.keep(term);
-      return tf.div(surrogate.asScalar(), -rows);
+      made = tf.div(surrogate.asScalar(), -rows);
+      return made;
     };
     try {
       const { value, grads } = tf.variableGrads(
@@ -130,6 +133,8 @@ export class GradientStep<Data> {
       );
       return { ...kept!, loss: value, grads };
     } catch (cause) {
+      made?.dispose();
+      forgetFailedTape();
       if (kept)
         tf.dispose([kept.value, kept.parts.logLikelihood, kept.parts.divergence] as tf.TensorContainer);
       if (cause instanceof Error && /Cannot find a connection|to be trainable/.test(cause.message)) {

@@ -160,3 +160,35 @@ it('names the node of a real model that goes wrong', async () => {
   expect(message).toContain('at row 33');
   expect(bits(list)).toBe(before);
 });
+
+it('a first step that throws leaves nothing behind, whatever it had saved for its gradient', async () => {
+  await tf.setBackend('cpu');
+  const shift = tf.variable(tf.zeros([2]));
+  const idle = tf.variable(tf.zeros([1]));
+  const model = directed()
+    .latent('z', () => product(normal({ mean: [0, 0], sd: 1 })))
+    .observed('x', ({ z }) => product(normal({ mean: tf.add(z, tf.exp(shift)), sd: 1 })));
+  const recognizer = directed()
+    .given('x')
+    .latent('z', ({ x }) => product(normal({ mean: tf.div(x, 2), sd: 1 })));
+  const bound = elbo(model, recognizer);
+  const optimizer = tf.train.sgd(0.1);
+  const attempt = async (x: number[][], variables?: tf.Variable[]) => {
+    const before = tf.memory().numTensors;
+    const run = train({
+      bound,
+      data: { x },
+      optimizer,
+      stream: stream(85),
+      ...(variables ? { variables } : {}),
+    });
+    const message = await run.next().then(
+      () => 'none',
+      (error: Error) => error.message,
+    );
+    return [tf.memory().numTensors - before, message.slice(0, 50)];
+  };
+  expect(await attempt([[1, Number.NaN]])).toEqual([0, "elbo: in the conditional of 'z': normal: mean must"]);
+  expect(await attempt([[1, 2, 3]])).toEqual([0, 'Operands could not be broadcast together with shap']);
+  expect(await attempt([[1, 2]], [idle])).toEqual([0, 'train: bound must depend on a trainable variable; ']);
+});
