@@ -18,6 +18,7 @@ export { type Categorical, type CategoricalOptions, categorical } from './distri
 export type {
   Distribution,
   HasCdf,
+  HasContinuousForms,
   HasEntropy,
   HasMean,
   HasMode,
@@ -38,6 +39,7 @@ export type {
 export type { FamilyFormula, NumberFormula } from './distributions/familyFormula.js';
 export { type ImplicitDefinition, implicitFamily } from './distributions/implicitFamily.js';
 export { type Laplace, type LaplaceOptions, laplace } from './distributions/laplace.js';
+export type { LocationScaleOptions } from './distributions/locationScale.js';
 export {
   type LocationScaleDefinition,
   locationScaleFamily,

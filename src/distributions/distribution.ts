@@ -61,6 +61,9 @@ export interface HasQuantile {
   quantile(p: tf.Tensor): tf.Tensor;
 }
 
+/** A family with all the closed forms that a continuous scalar family can have. */
+export interface HasContinuousForms extends HasMean, HasVariance, HasMode, HasEntropy, HasCdf, HasQuantile {}
+
 /** Axes for `count` in front of a shape. */
 export function drawShape(count: number | undefined, shape: readonly number[]): number[] {
   return count === undefined ? [...shape] : [count, ...shape];

@@ -3,15 +3,7 @@ import { positive } from '../support/support.js';
 import { choose, composedLog1p, stepwise } from '../tensor/composedMath.js';
 import { kernel } from '../tensor/formula.js';
 import { exponentiated, reciprocal } from '../tensor/transforms.js';
-import type {
-  Distribution,
-  HasCdf,
-  HasEntropy,
-  HasMean,
-  HasMode,
-  HasQuantile,
-  HasVariance,
-} from './distribution.js';
+import type { Distribution, HasContinuousForms } from './distribution.js';
 import type { OneOf } from './oneOf.js';
 import { aboveZero, logarithmic, runaway } from './parameters.js';
 import { scalarFamily } from './scalarFamily.js';
@@ -20,14 +12,7 @@ import { scalarFamily } from './scalarFamily.js';
 export type ExponentialOptions = OneOf<'rate' | 'logRate' | 'scale' | 'mean'>;
 
 /** An array of exponential distributions. */
-export interface Exponential
-  extends Distribution<'exponential', 'pathwise'>,
-    HasMean,
-    HasVariance,
-    HasMode,
-    HasEntropy,
-    HasCdf,
-    HasQuantile {
+export interface Exponential extends Distribution<'exponential', 'pathwise'>, HasContinuousForms {
   /** A parameter as the formulas read it, differentiable. */
   parameter(name: 'rate'): tf.Tensor;
 }

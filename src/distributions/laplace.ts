@@ -1,65 +1,37 @@
 import * as tf from '@tensorflow/tfjs';
 import { real } from '../support/support.js';
-import type { ParameterValue } from '../tensor/checks.js';
 import { composedAbs, composedExp, when } from '../tensor/composedMath.js';
 import { kernel } from '../tensor/formula.js';
-import { exponentiated } from '../tensor/transforms.js';
-import type {
-  Distribution,
-  HasCdf,
-  HasEntropy,
-  HasMean,
-  HasMode,
-  HasQuantile,
-  HasVariance,
-} from './distribution.js';
-import type { OneOf } from './oneOf.js';
-import { aboveZero, finite, logarithmic, runaway } from './parameters.js';
+import type { Distribution, HasContinuousForms } from './distribution.js';
+import {
+  affineDraw,
+  type LocationScaleOptions,
+  locationItself,
+  locationScaleParameters,
+} from './locationScale.js';
 import { scalarFamily } from './scalarFamily.js';
 
 /** Parameters of {@link laplace}. */
-export type LaplaceOptions = { readonly location: ParameterValue } & OneOf<'scale' | 'logScale'>;
+export type LaplaceOptions = LocationScaleOptions;
 
 /** An array of Laplace distributions. */
-export interface Laplace
-  extends Distribution<'laplace', 'pathwise'>,
-    HasMean,
-    HasVariance,
-    HasMode,
-    HasEntropy,
-    HasCdf,
-    HasQuantile {
+export interface Laplace extends Distribution<'laplace', 'pathwise'>, HasContinuousForms {
   /** A parameter as the formulas read it, differentiable. */
   parameter(name: 'location' | 'scale'): tf.Tensor;
 }
-
-const location = { ...kernel('identity', (v) => v.clone()), parameters: ['location'] };
 
 const make = scalarFamily({
   family: 'laplace',
   route: 'pathwise',
   support: real,
-  parameters: {
-    location: { location: { domain: finite } },
-    scale: {
-      scale: { domain: aboveZero, fix: 'pass logScale if your network can produce negative values' },
-      logScale: { domain: logarithmic, fix: runaway, transform: exponentiated },
-    },
-  },
+  parameters: locationScaleParameters,
   logDensity: kernel('laplaceLogDensity', (x, l, s) =>
     tf.neg(tf.add(tf.div(composedAbs(tf.sub(x!, l!)), s!), tf.log(tf.mul(2, s!)))),
   ),
-  // The same map of standard noise to a draw as the normal's: location + scale · noise.
-  draw: {
-    noise: 'laplace',
-    formula: {
-      ...kernel('normalDraw', (e, l, s) => tf.add(l!, tf.mul(s!, e!))),
-      parameters: ['noise', 'location', 'scale'],
-    },
-  },
+  draw: affineDraw('laplace'),
   summaries: {
-    mean: location,
-    mode: location,
+    mean: locationItself,
+    mode: locationItself,
     variance: kernel('laplaceVariance', (s) => tf.mul(2, tf.square(s!))),
     entropy: kernel('laplaceEntropy', (s) => tf.add(1, tf.log(tf.mul(2, s!)))),
   },

@@ -1,35 +1,17 @@
 import * as tf from '@tensorflow/tfjs';
 import { positive } from '../support/support.js';
-import type { ParameterValue } from '../tensor/checks.js';
 import { choose, composedExp, when } from '../tensor/composedMath.js';
 import { composedNormalCdf, composedNormalQuantile } from '../tensor/composedNormal.js';
 import { kernel } from '../tensor/formula.js';
-import { exponentiated } from '../tensor/transforms.js';
-import type {
-  Distribution,
-  HasCdf,
-  HasEntropy,
-  HasMean,
-  HasMode,
-  HasQuantile,
-  HasVariance,
-} from './distribution.js';
-import type { OneOf } from './oneOf.js';
-import { aboveZero, finite, logarithmic, runaway } from './parameters.js';
+import type { Distribution, HasContinuousForms } from './distribution.js';
+import { type LocationScaleOptions, locationScaleParameters } from './locationScale.js';
 import { scalarFamily } from './scalarFamily.js';
 
 /** Parameters of {@link logNormal}: location and scale of the logarithm. */
-export type LogNormalOptions = { readonly location: ParameterValue } & OneOf<'scale' | 'logScale'>;
+export type LogNormalOptions = LocationScaleOptions;
 
 /** An array of log-normal distributions. */
-export interface LogNormal
-  extends Distribution<'logNormal', 'pathwise'>,
-    HasMean,
-    HasVariance,
-    HasMode,
-    HasEntropy,
-    HasCdf,
-    HasQuantile {
+export interface LogNormal extends Distribution<'logNormal', 'pathwise'>, HasContinuousForms {
   /** A parameter as the formulas read it, differentiable. */
   parameter(name: 'location' | 'scale'): tf.Tensor;
 }
@@ -41,13 +23,7 @@ const make = scalarFamily({
   family: 'logNormal',
   route: 'pathwise',
   support: positive,
-  parameters: {
-    location: { location: { domain: finite } },
-    scale: {
-      scale: { domain: aboveZero, fix: 'pass logScale if your network can produce negative values' },
-      logScale: { domain: logarithmic, fix: runaway, transform: exponentiated },
-    },
-  },
+  parameters: locationScaleParameters,
   logDensity: kernel('logNormalLogDensity', (x, l, s) => {
     const logX = tf.log(safe(x!));
     const z = tf.div(tf.sub(logX, l!), s!);

@@ -1,66 +1,38 @@
 import * as tf from '@tensorflow/tfjs';
 import { real } from '../support/support.js';
-import type { ParameterValue } from '../tensor/checks.js';
 import { composedLogOdds, composedSigmoid, composedSoftplus } from '../tensor/composedMath.js';
 import { kernel } from '../tensor/formula.js';
-import { exponentiated } from '../tensor/transforms.js';
-import type {
-  Distribution,
-  HasCdf,
-  HasEntropy,
-  HasMean,
-  HasMode,
-  HasQuantile,
-  HasVariance,
-} from './distribution.js';
-import type { OneOf } from './oneOf.js';
-import { aboveZero, finite, logarithmic, runaway } from './parameters.js';
+import type { Distribution, HasContinuousForms } from './distribution.js';
+import {
+  affineDraw,
+  type LocationScaleOptions,
+  locationItself,
+  locationScaleParameters,
+} from './locationScale.js';
 import { scalarFamily } from './scalarFamily.js';
 
 /** Parameters of {@link logistic}. */
-export type LogisticOptions = { readonly location: ParameterValue } & OneOf<'scale' | 'logScale'>;
+export type LogisticOptions = LocationScaleOptions;
 
 /** An array of logistic distributions. */
-export interface Logistic
-  extends Distribution<'logistic', 'pathwise'>,
-    HasMean,
-    HasVariance,
-    HasMode,
-    HasEntropy,
-    HasCdf,
-    HasQuantile {
+export interface Logistic extends Distribution<'logistic', 'pathwise'>, HasContinuousForms {
   /** A parameter as the formulas read it, differentiable. */
   parameter(name: 'location' | 'scale'): tf.Tensor;
 }
-
-const location = { ...kernel('identity', (v) => v.clone()), parameters: ['location'] };
 
 const make = scalarFamily({
   family: 'logistic',
   route: 'pathwise',
   support: real,
-  parameters: {
-    location: { location: { domain: finite } },
-    scale: {
-      scale: { domain: aboveZero, fix: 'pass logScale if your network can produce negative values' },
-      logScale: { domain: logarithmic, fix: runaway, transform: exponentiated },
-    },
-  },
+  parameters: locationScaleParameters,
   logDensity: kernel('logisticLogDensity', (x, l, s) => {
     const z = tf.div(tf.sub(x!, l!), s!);
     return tf.neg(tf.add(tf.add(composedSoftplus(z), composedSoftplus(tf.neg(z))), tf.log(s!)));
   }),
-  // The same map of standard noise to a draw as the normal's: location + scale · noise.
-  draw: {
-    noise: 'logistic',
-    formula: {
-      ...kernel('normalDraw', (e, l, s) => tf.add(l!, tf.mul(s!, e!))),
-      parameters: ['noise', 'location', 'scale'],
-    },
-  },
+  draw: affineDraw('logistic'),
   summaries: {
-    mean: location,
-    mode: location,
+    mean: locationItself,
+    mode: locationItself,
     variance: kernel('logisticVariance', (s) => tf.mul(Math.PI ** 2 / 3, tf.square(s!))),
     entropy: kernel('logisticEntropy', (s) => tf.add(tf.log(s!), 2)),
   },

@@ -4,15 +4,7 @@ import type { ParameterValue } from '../tensor/checks.js';
 import { composedNormalCdf, composedNormalQuantile } from '../tensor/composedNormal.js';
 import { kernel } from '../tensor/formula.js';
 import { expHalf, exponentiated, inverseSquareRoot, squareRoot } from '../tensor/transforms.js';
-import type {
-  Distribution,
-  HasCdf,
-  HasEntropy,
-  HasMean,
-  HasMode,
-  HasQuantile,
-  HasVariance,
-} from './distribution.js';
+import type { Distribution, HasContinuousForms } from './distribution.js';
 import type { OneOf } from './oneOf.js';
 import { aboveZero, finite, logarithmic, logarithmicSquare, runaway } from './parameters.js';
 import { scalarFamily } from './scalarFamily.js';
@@ -23,14 +15,7 @@ export type NormalOptions = { readonly mean: ParameterValue } & OneOf<
 >;
 
 /** An array of normal distributions. */
-export interface Normal
-  extends Distribution<'normal', 'pathwise'>,
-    HasMean,
-    HasVariance,
-    HasMode,
-    HasEntropy,
-    HasCdf,
-    HasQuantile {
+export interface Normal extends Distribution<'normal', 'pathwise'>, HasContinuousForms {
   /** A parameter as the formulas read it, differentiable. */
   parameter(name: 'mean' | 'sd'): tf.Tensor;
 }
