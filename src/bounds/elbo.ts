@@ -85,7 +85,11 @@ export function elbo<
   model: DirectedModel<Given, Latent, Observed>,
   recognizer: DirectedModel<Told, Recognized, Seen> & Covers<Latent, Recognized, Seen> & Pathwise<Recognized>,
   options: ElboOptions<Latent, Recognized> = {},
-): Bound<ModelData<Given | (keyof Observed & string) | Told>> {
+): Bound<
+  ModelData<Given | (keyof Observed & string) | Told>,
+  keyof Observed & string,
+  keyof Latent & string
+> {
   const pairing = pairUp('elbo', model, recognizer);
   const settings = readOptions(pairing, options);
   const estimate = (data: object, stream: Stream): BoundEstimate => {

@@ -23,6 +23,7 @@ import type {
   Route,
 } from './distribution.js';
 import { type FamilyFormula, formulaFrom } from './familyFormula.js';
+import { familyNames } from './familyNames.js';
 import { aboveZero, type Domain, finite, fromZero, insideUnit, type ParameterForms } from './parameters.js';
 
 /** What a parameter of a user's family may be. */
@@ -123,6 +124,11 @@ export function readDefinition(
   if (typeof family !== 'string' || family === '' || /[|<>]/.test(family)) {
     throw new ParameterError(
       `${where}: family must be a name without |, < and >; got ${describe(family)}; pass for example family: 'triangle'`,
+    );
+  }
+  if (familyNames.includes(family)) {
+    throw new ParameterError(
+      `${where}: family must have a name of its own; got '${family}', which the library has; choose another`,
     );
   }
   if (!Object.hasOwn(supports, support)) {

@@ -77,9 +77,8 @@ function factorKl(m1: tf.Tensor, l1: tf.Tensor, m2: tf.Tensor, l2: tf.Tensor, d:
     const [i, j, k, l] = [at[0]! * d, at[1]! * d * d, at[2]! * d, at[3]! * d * d];
     const excess = new Float64Array(d * d);
     for (let c = 0; c < d; c++) {
-      const column = Float64Array.from({ length: d }, (_, r) =>
-        r < c ? 0 : factor1[j + r * d + c]! - factor2[l + r * d + c]!,
-      );
+      const column = new Float64Array(d);
+      for (let r = c; r < d; r++) column[r] = factor1[j + r * d + c]! - factor2[l + r * d + c]!;
       solveLower(factor2, l, d, column);
       for (let r = c; r < d; r++) excess[r * d + c] = column[r]!;
     }

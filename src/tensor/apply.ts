@@ -7,7 +7,7 @@ import { copiesOnWrite } from './engine.js';
 import { evaluateScalar } from './evaluateScalar.js';
 import type { Formula } from './formula.js';
 import { runHostOperation } from './hostOperation.js';
-import { composedTensor, type Operand, operandData } from './operand.js';
+import { composedTensor, live, type Operand, operandData } from './operand.js';
 
 /** How a formula is spread over arrays. */
 export interface Spread {
@@ -72,7 +72,7 @@ function applyKernel(
 
   return runHostOperation({
     where,
-    inputs: tracked.map((k) => operands[k]!.source as tf.Tensor),
+    inputs: tracked.map((k) => live(operands[k]!.source as tf.Tensor)),
     outShape,
     forward: (data) => {
       const pass: Pass = { owner, operands: gather(data), shape, outStrides, outSize: sizeOf(outShape) };

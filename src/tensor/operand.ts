@@ -1,6 +1,6 @@
 import * as tf from '@tensorflow/tfjs';
 import { ParameterError } from '../errors.js';
-import { describe, flatten, type ParameterValue, requireTensor } from './checks.js';
+import { describe, flatten, type ParameterValue, requireTensor, shapeText } from './checks.js';
 import { detach } from './detach.js';
 import { borrowedFloats, tensorOf } from './engine.js';
 import type { Transform } from './formula.js';
@@ -49,7 +49,15 @@ export function operandFrom(
 
 /** The operand's numbers before its transform, to be read at once: see {@link borrowedFloats}. */
 export function operandData(operand: Operand): Float32Array {
-  return operand.source instanceof Float32Array ? operand.source : borrowedFloats(operand.source);
+  return operand.source instanceof Float32Array ? operand.source : borrowedFloats(live(operand.source));
+}
+
+/** The tensor, unless it was disposed of. */
+export function live(tensor: tf.Tensor): tf.Tensor {
+  if (!tensor.isDisposed) return tensor;
+  throw new ParameterError(
+    `a distribution's parameters must be alive when it is used; got a disposed tensor of shape ${shapeText(tensor.shape)}; keep it with tf.keep(…), or make and use the distribution inside the same tf.tidy`,
+  );
 }
 
 /** The same operand with its gradient cut. */
@@ -62,7 +70,7 @@ export function rawTensor(operand: Operand): tf.Tensor {
   const { source, shape } = operand;
   if (source instanceof Float32Array) return tensorOf(source.slice(), shape);
   return tf.tidy(() => {
-    const tensor = operand.constant ? detach(source) : source.clone();
+    const tensor = operand.constant ? detach(source) : live(source).clone();
     return tensor.dtype === 'float32' ? tensor : tensor.toFloat();
   });
 }
