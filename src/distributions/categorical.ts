@@ -6,7 +6,7 @@ import { categoricalDraws } from '../random/noise.js';
 import { requireStream, type Stream } from '../random/stream.js';
 import { categories } from '../support/support.js';
 import { valuesAreChecked } from '../tensor/backend.js';
-import { positionText, requireCount, requireTensor, shapeText } from '../tensor/checks.js';
+import { positionText, requireTensor, shapeText } from '../tensor/checks.js';
 import { usesComposedForm } from '../tensor/composed.js';
 import { composedExp, composedLogSoftmax, when } from '../tensor/composedMath.js';
 import { detach } from '../tensor/detach.js';
@@ -32,8 +32,8 @@ export interface Categorical extends Distribution<'categorical', 'none'>, HasMod
 
 const forms: Record<string, Record<string, Form>> = {
   logits: {
-    logits: { domain: finite, fix: 'pass probabilities if a category is impossible' },
-    probabilities: { domain: unitClosed, transform: logarithm },
+    logits: { domain: finite, example: '[0, 1]', fix: 'pass probabilities if a category is impossible' },
+    probabilities: { domain: unitClosed, example: '[0.2, 0.8]', transform: logarithm },
   },
 };
 
@@ -86,11 +86,11 @@ function requireUnitSums(operand: Operand, k: number): void {
 }
 
 function member(operand: Operand, k: number): Categorical {
-  const arrayShape = operand.shape.slice(0, -1);
+  const arrayShape = Object.freeze(operand.shape.slice(0, -1));
 
   const logDensity = (x: tf.Tensor): tf.Tensor => {
     requireTensor('categorical.logDensity', 'x', x);
-    const shape = broadcastShapes('categorical.logDensity', [x.shape, arrayShape]);
+    const shape = broadcastShapes('categorical.logDensity', [x.shape, arrayShape], 'x and the arrayShape');
     if (usesComposedForm()) return composedLogDensity(x, operand, k, shape);
     const points = floatsOf(x);
     const strides = [broadcastStrides(x.shape, shape), broadcastStrides(arrayShape, shape)];
@@ -122,8 +122,7 @@ function member(operand: Operand, k: number): Categorical {
 
   const draw = (stream: Stream, count?: number): tf.Tensor => {
     requireStream('categorical.draw', stream);
-    if (count !== undefined) requireCount('categorical.draw', 'count', count);
-    const shape = drawShape(count, arrayShape);
+    const shape = drawShape('categorical.draw', count, arrayShape, k);
     const logits = Float32Array.from(categoricalRows(operand, operandData(operand), k).logs);
     const repeated = new Float32Array(sizeOf(shape) * k);
     for (let start = 0; start < repeated.length; start += logits.length) repeated.set(logits, start);
@@ -149,7 +148,7 @@ function member(operand: Operand, k: number): Categorical {
     route: 'none' as const,
     support: categories,
     arrayShape,
-    pointShape: [],
+    pointShape: Object.freeze([]),
     categories: k,
     operand,
     draw,

@@ -1,6 +1,9 @@
 import type * as tf from '@tensorflow/tfjs';
+import { ParameterError } from '../errors.js';
+import { sizeOf } from '../kernels/layout.js';
 import type { Stream } from '../random/stream.js';
 import type { Support } from '../support/support.js';
+import { requireCount, shapeText } from '../tensor/checks.js';
 
 /** How a draw depends on the parameters: it carries their gradient, or it does not. */
 export type Route = 'pathwise' | 'none';
@@ -24,7 +27,7 @@ export interface Distribution<Family extends string = string, R extends Route = 
   draw(stream: Stream, count?: number): tf.Tensor;
   /** A draw and its log density, in one pass where that is cheaper. */
   drawScored(stream: Stream, count?: number): { value: tf.Tensor; logDensity: tf.Tensor };
-  /** Log density (log mass for discrete families) in nats; −∞ outside the support. */
+  /** Log density (log mass for discrete families) in nats; −∞ outside the support, NaN only where x is NaN. */
   logDensity(x: tf.Tensor): tf.Tensor;
   /** The same distribution with its parameters cut from the gradient. */
   detached(): this;
@@ -64,7 +67,23 @@ export interface HasQuantile {
 /** A family with all the closed forms that a continuous scalar family can have. */
 export interface HasContinuousForms extends HasMean, HasVariance, HasMode, HasEntropy, HasCdf, HasQuantile {}
 
-/** Axes for `count` in front of a shape. */
-export function drawShape(count: number | undefined, shape: readonly number[]): number[] {
-  return count === undefined ? [...shape] : [count, ...shape];
+/** The most numbers that one call draws: a float32 array of them still fits every engine. */
+const mostNumbers = 2 ** 30;
+
+/** `count` in front of a shape, where it is given; refuses what is no count, or too much to draw at once. */
+export function drawShape(
+  where: string,
+  count: number | undefined,
+  shape: readonly number[],
+  numbersPerElement = 1,
+): number[] {
+  if (count === undefined) return [...shape];
+  requireCount(where, 'count', count);
+  const most = Math.floor(mostNumbers / Math.max(1, sizeOf(shape) * numbersPerElement));
+  if (count > most) {
+    throw new ParameterError(
+      `${where}: count must be at most ${most} for arrayShape ${shapeText(shape)}; got ${count}; draw in several calls`,
+    );
+  }
+  return [count, ...shape];
 }

@@ -5,7 +5,7 @@ import { noise } from '../random/noise.js';
 import { requireStream, type Stream } from '../random/stream.js';
 import { realVector } from '../support/support.js';
 import { valuesAreChecked } from '../tensor/backend.js';
-import { type ParameterValue, positionText, requireCount, shapeText } from '../tensor/checks.js';
+import { type ParameterValue, positionText, shapeText } from '../tensor/checks.js';
 import { usesComposedForm } from '../tensor/composed.js';
 import { tensorOf } from '../tensor/engine.js';
 import { runHostOperation } from '../tensor/hostOperation.js';
@@ -14,7 +14,7 @@ import { solveLower, solveLowerTransposed } from '../tensor/triangular.js';
 import type { Distribution, HasEntropy, HasMean, HasMode, HasVariance } from './distribution.js';
 import { drawShape } from './distribution.js';
 import { requirePoints, sumTrailing } from './fold.js';
-import { finite, readParameters } from './parameters.js';
+import { finite, readParameters, requireParameterName } from './parameters.js';
 
 /** Parameters of {@link multivariateNormal}. */
 export interface MultivariateNormalOptions {
@@ -61,7 +61,10 @@ export function multivariateNormal(options: MultivariateNormalOptions): Multivar
   const where = 'multivariateNormal';
   const { mean, covarianceFactor: factor } = readParameters(
     where,
-    { mean: { mean: { domain: finite } }, covarianceFactor: { covarianceFactor: { domain: finite } } },
+    {
+      mean: { mean: { domain: finite, example: '[0, 0]' } },
+      covarianceFactor: { covarianceFactor: { domain: finite, example: '[[1, 0], [0.5, 1]]' } },
+    },
     options,
   ) as { mean: Operand; covarianceFactor: Operand };
   const d = mean.shape[mean.shape.length - 1] ?? 0;
@@ -92,10 +95,13 @@ function requirePositiveDiagonal(factor: Operand, d: number): void {
 }
 
 function member(mean: Operand, factor: Operand, d: number): MultivariateNormal {
-  const arrayShape = broadcastShapes('multivariateNormal', [
-    mean.shape.slice(0, -1),
-    factor.shape.slice(0, -2),
-  ]);
+  const arrayShape = Object.freeze(
+    broadcastShapes(
+      'multivariateNormal',
+      [mean.shape.slice(0, -1), factor.shape.slice(0, -2)],
+      'the leading axes of mean and covarianceFactor',
+    ),
+  );
   const score = (x: tf.Tensor, fold: number): tf.Tensor => {
     requirePoints('multivariateNormal.logDensity', x, [d]);
     return tf.tidy(() =>
@@ -108,8 +114,7 @@ function member(mean: Operand, factor: Operand, d: number): MultivariateNormal {
   const lower = (): tf.Tensor => tf.tidy(() => tf.mul(composedTensor(factor), lowerMask(d)));
   const draw = (stream: Stream, count?: number): tf.Tensor => {
     requireStream('multivariateNormal.draw', stream);
-    if (count !== undefined) requireCount('multivariateNormal.draw', 'count', count);
-    const shape = [...drawShape(count, arrayShape), d];
+    const shape = [...drawShape('multivariateNormal.draw', count, arrayShape, d * d), d];
     const values = noise(stream, 'normal', sizeOf(shape));
     return tf.tidy(() => {
       // Row vectors times Lᵀ, written as a broadcast product so that any leading axes work.
@@ -123,7 +128,7 @@ function member(mean: Operand, factor: Operand, d: number): MultivariateNormal {
     route: 'pathwise' as const,
     support: realVector,
     arrayShape,
-    pointShape: [d],
+    pointShape: Object.freeze([d]),
     operands: { mean, covarianceFactor: factor },
     draw,
     drawScored: (stream: Stream, count?: number) => {
@@ -132,14 +137,17 @@ function member(mean: Operand, factor: Operand, d: number): MultivariateNormal {
     },
     logDensity: (x: tf.Tensor) => score(x, 0),
     foldedLogDensity: score,
-    parameter: (name: 'mean' | 'covarianceFactor') => (name === 'mean' ? composedTensor(mean) : lower()),
+    parameter: (name: 'mean' | 'covarianceFactor') => {
+      requireParameterName('multivariateNormal.parameter', name, ['mean', 'covarianceFactor']);
+      return name === 'mean' ? composedTensor(mean) : lower();
+    },
     mean: fillMean,
     mode: fillMean,
     variance: () => tf.tidy(() => tf.broadcastTo(tf.sum(tf.square(lower()), -1), [...arrayShape, d])),
     entropy: () =>
       tf.tidy(() => {
         const logs = tf.sum(tf.log(diagonal(composedTensor(factor), d)), -1);
-        return tf.broadcastTo(tf.add(logs, d * (halfLogTwoPi + 0.5)), arrayShape);
+        return tf.broadcastTo(tf.add(logs, d * (halfLogTwoPi + 0.5)), [...arrayShape]);
       }),
     detached: () => member(detachedOperand(mean), detachedOperand(factor), d),
   }) as unknown as MultivariateNormal;
@@ -163,7 +171,8 @@ interface Meeting {
 
 function meeting(x: readonly number[], mean: readonly number[], factor: readonly number[]): Meeting {
   const batches = [x.slice(0, -1), mean.slice(0, -1), factor.slice(0, -2)];
-  const shape = broadcastShapes('multivariateNormal.logDensity', batches);
+  const whose = 'the leading axes of x, mean and covarianceFactor';
+  const shape = broadcastShapes('multivariateNormal.logDensity', batches, whose);
   return { shape, strides: batches.map((b) => broadcastStrides(b, shape)) };
 }
 

@@ -1,7 +1,13 @@
 import * as tf from '@tensorflow/tfjs';
 import { ParameterError } from '../errors.js';
 import { valuesAreChecked } from '../tensor/backend.js';
-import { type ParameterValue, positionText, requireKnownKeys, shapeText } from '../tensor/checks.js';
+import {
+  describe,
+  type ParameterValue,
+  positionText,
+  requireKnownKeys,
+  shapeText,
+} from '../tensor/checks.js';
 import type { Transform } from '../tensor/formula.js';
 import { type Operand, operandData, operandFrom } from '../tensor/operand.js';
 
@@ -49,6 +55,8 @@ export interface Form {
   readonly domain: Domain;
   readonly transform?: Transform;
   readonly fix?: string;
+  /** A value to show where something else than numbers was given; 1 unless it is named. */
+  readonly example?: string;
 }
 
 /** The ways to give each parameter of a family, by option name; the first is the one that formulas read. */
@@ -75,7 +83,7 @@ export function readParameters(
     }
     const name = used[0]!;
     const form = ways[name]!;
-    const operand = operandFrom(family, name, given[name]!, form.transform);
+    const operand = operandFrom(family, name, given[name]!, form.transform, form.example);
     checkDomain(family, name, form, operand);
     result[parameter] = operand;
   }
@@ -88,6 +96,22 @@ function example(forms: ParameterForms): string {
     .join(', ');
 }
 
+/** The names under which options give a family's parameters, such as `mean and logVariance`. */
+export function givenNames(forms: ParameterForms, options: object): string {
+  const given = options as Record<string, unknown>;
+  return Object.values(forms)
+    .flatMap((ways) => Object.keys(ways).filter((name) => given[name] !== undefined))
+    .join(' and ');
+}
+
+/** Refuses a name that is not a parameter's. */
+export function requireParameterName(where: string, name: unknown, known: readonly string[]): void {
+  if (typeof name === 'string' && known.includes(name)) return;
+  throw new ParameterError(
+    `${where}: name must be one of ${known.join(', ')}; got ${describe(name)}; ask for the form that the formulas read`,
+  );
+}
+
 /** Throws where a parameter's numbers leave its domain, naming the first and where it stands. */
 export function checkDomain(family: string, name: string, form: Form, operand: Operand): void {
   if (operand.source instanceof tf.Tensor && !valuesAreChecked()) return;
@@ -98,9 +122,13 @@ export function checkDomain(family: string, name: string, form: Form, operand: O
     operand.shape.length === 0
       ? ''
       : ` at ${positionText(at, operand.shape)} (shape ${shapeText(operand.shape)})`;
-  throw new ParameterError(
-    `${family}: ${name} must be ${form.domain.words}; got ${data[at]}${where}; ${form.fix ?? 'mend the value, or look for a division or logarithm that made it'}`,
-  );
+  const value = data[at]!;
+  const { words } = form.domain;
+  // What is not a number at all is not cured by another parametrization.
+  const broken = Number.isNaN(value) || (!Number.isFinite(value) && form.fix !== runaway);
+  const asked = broken && words !== finite.words ? `${words} and finite` : words;
+  const fix = broken ? 'look for the division or logarithm that made it' : (form.fix ?? 'mend the value');
+  throw new ParameterError(`${family}: ${name} must be ${asked}; got ${value}${where}; ${fix}`);
 }
 
 function firstOutside(data: Float32Array, { above, below }: Domain): number {

@@ -1,4 +1,5 @@
 import * as tf from '@tensorflow/tfjs';
+import { ParameterError } from '../errors.js';
 import { poissonDraws } from '../random/noise.js';
 import { count } from '../support/support.js';
 import { choose, composedLogGamma, stepwise, when } from '../tensor/composedMath.js';
@@ -20,6 +21,8 @@ export interface Poisson extends Distribution<'poisson', 'none'>, HasMean, HasVa
 }
 
 const rate = { ...kernel('identity', (v) => v.clone()), parameters: ['rate'] };
+/** Beyond it neighboring counts are no longer told apart. */
+const mostDrawn = 1e15;
 const fix = 'pass logRate if your network can produce negative values';
 
 const make = scalarFamily({
@@ -39,7 +42,18 @@ const make = scalarFamily({
     const inside = tf.sub(tf.sub(tf.mul(safe, tf.log(r!)), r!), composedLogGamma(tf.add(safe, 1)));
     return choose(whole, inside, Number.NEGATIVE_INFINITY);
   }),
-  draw: { sampler: (stream, values) => poissonDraws(stream, values.rate!) },
+  draw: {
+    sampler: (stream, values) => {
+      const rates = values.rate!;
+      const at = rates.findIndex((r) => !(r <= mostDrawn));
+      if (at >= 0) {
+        throw new ParameterError(
+          `poisson.draw: rate must be at most ${mostDrawn} to be drawn; got ${rates[at]} at element ${at}; look for what made it so large`,
+        );
+      }
+      return poissonDraws(stream, rates);
+    },
+  },
   summaries: {
     mean: rate,
     variance: rate,
@@ -57,7 +71,8 @@ const make = scalarFamily({
  * Q(⌊x⌋ + 1, rate), by its kernel alone: not inside `composed`.
  *
  * @param options - one of `rate`, `logRate`, `mean`; rate and mean are the same
- * @throws ParameterError when no parameter or more than one is given, or a rate is not positive and finite.
+ * @throws ParameterError when no parameter or more than one is given, or a rate is not positive and finite; when a rate above 1e15
+ *   is drawn from.
  * @example
  * ```ts
  * import * as tf from '@tensorflow/tfjs';

@@ -62,8 +62,8 @@ export function product<D extends Distribution>(d: D, axes = 1): Product<D> {
       `product: axes must be at most the number of array axes, ${d.arrayShape.length}; got ${axes} for arrayShape ${shapeText(d.arrayShape)}; give a parameter the missing axes, for example mean: tf.zeros([8])`,
     );
   }
-  const arrayShape = d.arrayShape.slice(0, rank);
-  const pointShape = [...d.arrayShape.slice(rank), ...d.pointShape];
+  const arrayShape = Object.freeze(d.arrayShape.slice(0, rank));
+  const pointShape = Object.freeze([...d.arrayShape.slice(rank), ...d.pointShape]);
   const support: Support = { ...d.support, pointRank: pointShape.length };
   const family = `product<${d.family}>`;
   const score = (x: tf.Tensor, fold: number): tf.Tensor => {

@@ -1,16 +1,15 @@
 import * as tf from '@tensorflow/tfjs';
-import { ParameterError } from '../errors.js';
 import { broadcastShapes, sizeOf } from '../kernels/layout.js';
 import { type NoiseKind, noise } from '../random/noise.js';
 import { requireStream, type Stream } from '../random/stream.js';
 import type { Support } from '../support/support.js';
 import { applyFormula } from '../tensor/apply.js';
-import { describe, requireCount, requireTensor } from '../tensor/checks.js';
+import { requireTensor } from '../tensor/checks.js';
 import { floatsOf, tensorOf } from '../tensor/engine.js';
 import { type Formula, kernel } from '../tensor/formula.js';
 import { detachedOperand, type Operand } from '../tensor/operand.js';
 import { type Distribution, drawShape, type Route } from './distribution.js';
-import { type ParameterForms, readParameters } from './parameters.js';
+import { givenNames, type ParameterForms, readParameters, requireParameterName } from './parameters.js';
 
 /** Everything a scalar family is: its formulas, by name. Each formula names the parameters it reads. */
 export interface ScalarDefinition<Family extends string, R extends Route> {
@@ -62,6 +61,11 @@ export function scalarFamily<Family extends string, R extends Route>(
   const { family, parameters } = definition;
   return (options) => {
     const operands = readParameters(family, parameters, options);
+    broadcastShapes(
+      family,
+      Object.values(operands).map((o) => o.shape),
+      givenNames(parameters, options),
+    );
     definition.check?.(operands);
     return member(definition, operands);
   };
@@ -72,9 +76,11 @@ function member<Family extends string, R extends Route>(
   operands: Record<string, Operand>,
 ): ScalarDistribution<Family, R> {
   const { family, route, support } = definition;
-  const arrayShape = broadcastShapes(
-    family,
-    Object.values(operands).map((o) => o.shape),
+  const arrayShape = Object.freeze(
+    broadcastShapes(
+      family,
+      Object.values(operands).map((o) => o.shape),
+    ),
   );
   // A formula's leading arguments (a point, noise) are given; the rest are parameters, found by name.
   const pick = (formula: Formula, given: readonly Operand[]): Operand[] => [
@@ -82,7 +88,9 @@ function member<Family extends string, R extends Route>(
     ...formula.parameters.slice(given.length).map((name) => operands[name]!),
   ];
   const point = (name: string, x: tf.Tensor): Operand => {
-    requireTensor(`${family}.${name}`, name === 'quantile' ? 'p' : 'x', x);
+    const letter = name === 'quantile' ? 'p' : 'x';
+    requireTensor(`${family}.${name}`, letter, x);
+    broadcastShapes(`${family}.${name}`, [x.shape, arrayShape], `${letter} and the arrayShape`);
     return { shape: x.shape, source: x, transform: undefined, constant: false };
   };
   const score = (x: tf.Tensor, fold: number): tf.Tensor =>
@@ -95,8 +103,7 @@ function member<Family extends string, R extends Route>(
 
   const draw = (stream: Stream, count?: number): tf.Tensor => {
     requireStream(`${family}.draw`, stream);
-    if (count !== undefined) requireCount(`${family}.draw`, 'count', count);
-    const shape = drawShape(count, arrayShape);
+    const shape = drawShape(`${family}.draw`, count, arrayShape);
     const how = definition.draw;
     const source =
       'noise' in how ? noise(stream, how.noise, sizeOf(shape)) : how.sampler(stream, spread(shape));
@@ -128,7 +135,7 @@ function member<Family extends string, R extends Route>(
     route,
     support,
     arrayShape,
-    pointShape: [],
+    pointShape: Object.freeze([]),
     operands,
     draw,
     drawScored: (stream: Stream, count?: number) => {
@@ -138,12 +145,8 @@ function member<Family extends string, R extends Route>(
     logDensity: (x: tf.Tensor) => score(x, 0),
     foldedLogDensity: score,
     parameter: (name: string) => {
-      const operand = Object.hasOwn(operands, name) ? operands[name] : undefined;
-      if (!operand) {
-        throw new ParameterError(
-          `${family}.parameter: name must be one of ${Object.keys(operands).join(', ')}; got ${describe(name)}; ask for the form that the formulas read`,
-        );
-      }
+      requireParameterName(`${family}.parameter`, name, Object.keys(operands));
+      const operand = operands[name]!;
       return applyFormula(`${family}.parameter`, identity, [operand], { shape: operand.shape });
     },
     detached: () =>

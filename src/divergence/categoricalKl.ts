@@ -36,7 +36,7 @@ function categoricalKl(q: Inside, p: Inside): tf.Tensor {
     const [a, b] = [q.logProbabilities(), p.logProbabilities()];
     return tf.sum(tf.mul(composedExp(a), tf.sub(a, b)), -1);
   }
-  const shape = broadcastShapes('kl', [q.arrayShape, p.arrayShape]);
+  const shape = broadcastShapes('kl', [q.arrayShape, p.arrayShape], 'the arrayShapes of q and p');
   const strides = [broadcastStrides(q.arrayShape, shape), broadcastStrides(p.arrayShape, shape)];
   const operands = [q.operand, p.operand];
   const tracked = operands.flatMap((o, i) => (!o.constant && o.source instanceof tf.Tensor ? [i] : []));

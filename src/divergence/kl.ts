@@ -58,13 +58,13 @@ export function kl<Q extends Distribution, P extends Distribution>(
   requireDistribution('kl', 'q', q);
   const other: Distribution = p;
   requireDistribution('kl', 'p', other);
+  requireSamePoints('kl', q, other);
   const formula = closedKl(q, other);
   if (!formula) {
     throw new DivergenceError(
       `kl: the pair must have a closed form; got (${q.family}, ${other.family}); use sampledKl(q, p, stream), or registerKl('${q.family}', '${other.family}', …)`,
     );
   }
-  requireSamePoints('kl', q, other);
   return formula(q, other, 0);
 }
 

@@ -68,7 +68,7 @@ function factorKl(m1: tf.Tensor, l1: tf.Tensor, m2: tf.Tensor, l2: tf.Tensor, d:
     m2.shape.slice(0, -1),
     l2.shape.slice(0, -2),
   ];
-  const shape = broadcastShapes('kl', batches);
+  const shape = broadcastShapes('kl', batches, 'the leading axes of means and factors');
   const strides = batches.map((b) => broadcastStrides(b, shape));
 
   // Differencing the factors before the solve keeps M − I accurate where the two distributions are close.

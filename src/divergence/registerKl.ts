@@ -31,11 +31,7 @@ export function registerKl<Q extends Distribution, P extends Distribution>(
   p: P['family'],
   formula: (q: Q, p: P) => tf.Tensor,
 ): void {
-  if (typeof q !== 'string' || typeof p !== 'string' || q === '' || p === '') {
-    throw new ParameterError(
-      `registerKl: q and p must be family names; got ${describe(q)} and ${describe(p)}; pass for example 'normal', 'laplace'`,
-    );
-  }
+  requireNames('registerKl', q, p);
   if (typeof formula !== 'function') {
     throw new ParameterError(
       `registerKl: formula must be a function; got ${describe(formula)}; pass (q, p) => …`,
@@ -55,6 +51,7 @@ export function registerKl<Q extends Distribution, P extends Distribution>(
  *
  * @param q - family name of the first argument, for example `'normal'` or `'product<normal>'`
  * @param p - family name of the second
+ * @throws ParameterError when a name is not a text or empty.
  * @example
  * ```ts
  * import { hasClosedKl } from 'leadline';
@@ -63,6 +60,14 @@ export function registerKl<Q extends Distribution, P extends Distribution>(
  * ```
  */
 export function hasClosedKl(q: string, p: string): boolean {
+  requireNames('hasClosedKl', q, p);
   ensureClosedForms();
   return isRegistered(q, p);
+}
+
+function requireNames(where: string, q: unknown, p: unknown): void {
+  if (typeof q === 'string' && typeof p === 'string' && q !== '' && p !== '') return;
+  throw new ParameterError(
+    `${where}: q and p must be family names; got ${describe(q)} and ${describe(p)}; pass for example 'normal', 'laplace'`,
+  );
 }

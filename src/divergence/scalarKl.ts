@@ -22,7 +22,7 @@ import { addKl, type ClosedKlPairs } from './registry.js';
 function add(pair: keyof ClosedKlPairs, formula: Formula): void {
   addKl(pair, (q, p, fold) => {
     const [a, b] = [scalar(q), scalar(p)];
-    const shape = broadcastShapes('kl', [a.arrayShape, b.arrayShape]);
+    const shape = broadcastShapes('kl', [a.arrayShape, b.arrayShape], 'the arrayShapes of q and p');
     return applyFormula('kl', formula, [...Object.values(a.operands), ...Object.values(b.operands)], {
       shape,
       fold,

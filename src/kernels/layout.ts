@@ -1,7 +1,11 @@
 import { ShapeError } from '../errors.js';
 
-/** The shape that `shapes` broadcast to, from the right; `where` names the caller in the error. */
-export function broadcastShapes(where: string, shapes: readonly (readonly number[])[]): number[] {
+/** The shape that `shapes` broadcast to, from the right; the error names the caller and whose shapes they are. */
+export function broadcastShapes(
+  where: string,
+  shapes: readonly (readonly number[])[],
+  whose = 'shapes',
+): number[] {
   const rank = Math.max(0, ...shapes.map((s) => s.length));
   const result: number[] = new Array(rank).fill(1);
   for (const shape of shapes) {
@@ -11,7 +15,7 @@ export function broadcastShapes(where: string, shapes: readonly (readonly number
       if (size === 1 || size === result[at]) continue;
       if (result[at] !== 1) {
         throw new ShapeError(
-          `${where}: shapes must broadcast from the right; got ${shapes.map((s) => `[${s.join(', ')}]`).join(' and ')}; make the sizes of each axis equal, or 1`,
+          `${where}: ${whose} must broadcast from the right; got ${shapes.map((s) => `[${s.join(', ')}]`).join(' and ')}; make the sizes of each axis equal, or 1`,
         );
       }
       result[at] = size;

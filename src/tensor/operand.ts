@@ -24,6 +24,7 @@ export function operandFrom(
   name: string,
   value: ParameterValue,
   transform?: Transform,
+  example = '1',
 ): Operand {
   if (typeof value === 'number') {
     return { shape: [], source: Float32Array.of(value), transform, constant: true };
@@ -40,7 +41,7 @@ export function operandFrom(
   }
   if (!(value instanceof tf.Tensor)) {
     throw new ParameterError(
-      `${where}: ${name} must be a tensor, a number, nested numbers or a typed array; got ${describe(value)}; pass for example ${name}: 1`,
+      `${where}: ${name} must be a tensor, a number, nested numbers or a typed array; got ${describe(value)}; pass for example ${name}: ${example}`,
     );
   }
   requireTensor(where, name, value);

@@ -290,7 +290,7 @@ describe('wrong definitions have one clear message each', () => {
     ],
     [
       () => byStandard({ location: 0, scale: -1 }),
-      'logisticByStandard: scale must be positive; got -1; mend the value, or look for a division or logarithm that made it',
+      'logisticByStandard: scale must be positive; got -1; mend the value',
     ],
   ])('%#', (act, message) => {
     expect(act).toThrow(new ParameterError(message));

@@ -207,7 +207,7 @@ describe('wrong use', () => {
       .observed('x', ({ u }) => product(normal({ mean: u, sd: 1 })));
     expect(text(() => model.logJoint({ u: [[Number.NaN]], x: [[0]] }))).toEqual([
       ParameterError,
-      "logJoint: in the conditional of 'x': normal: mean must be finite; got NaN at [0, 0] (shape [1, 1]); mend the value, or look for a division or logarithm that made it",
+      "logJoint: in the conditional of 'x': normal: mean must be finite; got NaN at [0, 0] (shape [1, 1]); look for the division or logarithm that made it",
     ]);
     const own = directed().observed('x', () => {
       throw new TypeError('mine');
