@@ -8,7 +8,7 @@ import { log1pmx } from './log1pmx.js';
 export function deviance(x: number, m: number): number {
   if (x === 0.0) return m;
   const d = m - x;
-  if (Math.abs(d) <= 0.5 * x) return -x * log1pmx(d / x);
+  if (Math.abs(d) <= 0.5 * x) return x * (0.0 - log1pmx(d / x));
   if (x === Infinity || m === Infinity) return Infinity;
   return x * logRatio(x, m) + d;
 }

@@ -72,7 +72,7 @@ export function exponentialQuantile_rate(p: number, rate: number): number {
 /** Divergence, r − 1 − log r with r = otherRate / rate. @kernel */
 export function exponentialKl(rate: number, otherRate: number): number {
   const t = (otherRate - rate) / rate;
-  return t < -0.5 ? t - logRatio(otherRate, rate) : -log1pmx(t);
+  return t < -0.5 ? t - logRatio(otherRate, rate) : 0.0 - log1pmx(t);
 }
 export function exponentialKl_rate(rate: number, otherRate: number): number {
   return (rate - otherRate) / rate / rate;
