@@ -1,4 +1,5 @@
 import { logRatio } from '../numeric/deviance.js';
+import { type RowLogSums, rowLogSums } from '../tensor/logSumExp.js';
 import type { Operand } from '../tensor/operand.js';
 
 /**
@@ -20,42 +21,30 @@ export interface CategoricalRows {
 /** Reads an operand's numbers, `k` to a row. */
 export function categoricalRows(operand: Operand, numbers: ArrayLike<number>, k: number): CategoricalRows {
   const raw = Float64Array.from(numbers);
-  const count = raw.length / k;
-  const [largest, rest] = [new Float64Array(count), new Float64Array(count)];
-  const logs = new Float64Array(raw.length);
   const probabilities = operand.transform !== undefined;
-  for (let row = 0; row < count; row++) {
-    const [start, end] = [row * k, (row + 1) * k];
-    if (probabilities) {
-      let sum = 0;
-      for (let i = start; i < end; i++) sum += raw[i]!;
-      largest[row] = sum;
-      for (let i = start; i < end; i++) logs[i] = logShare(raw[i]!, sum, raw, start, end, i);
-      continue;
-    }
-    let best = start;
-    for (let i = start + 1; i < end; i++) if (raw[i]! > raw[best]!) best = i;
-    let others = 0;
-    for (let i = start; i < end; i++) if (i !== best) others += Math.exp(raw[i]! - raw[best]!);
-    largest[row] = raw[best]!;
-    rest[row] = Math.log1p(others);
-    for (let i = start; i < end; i++) logs[i] = raw[i]! - raw[best]! - rest[row]!;
+  const logs = new Float64Array(raw.length);
+  const { largest, rest } = probabilities ? rowSums(raw, k) : rowLogSums(raw, k);
+  for (let i = 0; i < raw.length; i++) {
+    const row = Math.floor(i / k);
+    logs[i] = probabilities
+      ? logShare(raw, i, row * k, k, largest[row]!)
+      : raw[i]! - largest[row]! - rest[row]!;
   }
   return { k, raw, probabilities, logs, largest, rest };
 }
 
-/** log(p / sum); where p is most of the sum, from what the others add up to. */
-function logShare(
-  p: number,
-  sum: number,
-  raw: Float64Array,
-  start: number,
-  end: number,
-  own: number,
-): number {
+function rowSums(raw: Float64Array, k: number): RowLogSums {
+  const largest = new Float64Array(raw.length / k);
+  for (let i = 0; i < raw.length; i++) largest[Math.floor(i / k)]! += raw[i]!;
+  return { largest, rest: new Float64Array(largest.length) };
+}
+
+/** log(p / sum) of raw number `own`; where p is most of the sum, from what the others add up to. */
+function logShare(raw: Float64Array, own: number, start: number, k: number, sum: number): number {
+  const p = raw[own]!;
   if (p < 0.5 * sum) return Math.log(p / sum);
   let others = 0;
-  for (let i = start; i < end; i++) if (i !== own) others += raw[i]!;
+  for (let i = start; i < start + k; i++) if (i !== own) others += raw[i]!;
   return -Math.log1p(others / p);
 }
 

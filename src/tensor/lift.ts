@@ -43,9 +43,15 @@ export interface ScalarFormula {
  */
 export function lift(formula: ScalarFormula): (...values: ParameterValue[]) => tf.Tensor {
   const { name, value, partials } = formula ?? {};
-  if (typeof value !== 'function' || !Array.isArray(partials)) {
+  const complete =
+    typeof name === 'string' &&
+    name !== '' &&
+    typeof value === 'function' &&
+    Array.isArray(partials) &&
+    partials.every((partial) => partial === undefined || typeof partial === 'function');
+  if (!complete) {
     throw new ParameterError(
-      `lift: formula must have a name, a value function and an array of partials; got ${describe(formula)}; pass { name, value, partials }`,
+      `lift: formula must have a name, a value function and an array of partials, each a function or undefined; got ${describe(formula)}; pass { name, value, partials }`,
     );
   }
   const composed = formula.composed;

@@ -37,32 +37,50 @@ export function logSumExp(x: tf.Tensor): tf.Tensor {
     where: 'logSumExp',
     inputs: [x],
     outShape: x.shape.slice(0, -1),
-    forward: ([data]) => Float32Array.from(rowLogSums(data!, n)),
+    forward: ([data]) => {
+      const { largest, rest } = rowLogSums(data!, n);
+      return Float32Array.from(largest, (most, row) => most + rest[row]!);
+    },
     gradient: (_k, [data], upstream) => {
-      const sums = rowLogSums(data!, n);
+      const { largest, rest } = rowLogSums(data!, n);
       return Float32Array.from(data!, (v, i) => {
         const row = Math.floor(i / n);
-        return sums[row] === Number.NEGATIVE_INFINITY ? 0 : upstream[row]! * Math.exp(v - sums[row]!);
+        const most = largest[row]!;
+        // The slope of an infinite sum lies where the infinity is, and an empty one has none.
+        const infinite = most === Number.POSITIVE_INFINITY || most === Number.NEGATIVE_INFINITY;
+        const share = infinite ? Number(v === Number.POSITIVE_INFINITY) : Math.exp(v - most - rest[row]!);
+        return upstream[row]! * share;
       });
     },
   });
 }
 
+/** The log-sum-exps of rows, each in two parts: their sum may round away what the smaller one says. */
+export interface RowLogSums {
+  /** The largest number of each row; what is not finite stands here, and 0 beside it. */
+  readonly largest: Float64Array;
+  /** log1p of the others' exponentials, relative to the largest. */
+  readonly rest: Float64Array;
+}
+
 /** The log-sum-exp of each row of `n`, in double precision. */
-export function rowLogSums(data: Float32Array | Float64Array, n: number): Float64Array {
-  const result = new Float64Array(data.length / n);
-  for (let row = 0; row < result.length; row++) {
+export function rowLogSums(data: ArrayLike<number>, n: number): RowLogSums {
+  const rows = data.length / n;
+  const [largest, rest] = [new Float64Array(rows), new Float64Array(rows)];
+  for (let row = 0; row < rows; row++) {
     const start = row * n;
     let best = start;
-    for (let i = start + 1; i < start + n; i++) if (data[i]! > data[best]!) best = i;
-    const most = data[best]!;
-    if (!Number.isFinite(most)) {
-      result[row] = most;
-      continue;
+    let broken = false;
+    for (let i = start; i < start + n; i++) {
+      if (data[i]! > data[best]!) best = i;
+      broken ||= Number.isNaN(data[i]!);
     }
+    const most = broken ? Number.NaN : data[best]!;
+    largest[row] = most;
+    if (!Number.isFinite(most)) continue;
     let others = 0;
     for (let i = start; i < start + n; i++) if (i !== best) others += Math.exp(data[i]! - most);
-    result[row] = most + Math.log1p(others);
+    rest[row] = Math.log1p(others);
   }
-  return result;
+  return { largest, rest };
 }

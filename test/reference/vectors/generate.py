@@ -203,7 +203,24 @@ def multivariate_normal():
     return {'logDensity': densities, 'kl': divergences}
 
 
-for name, make in (('categorical', categorical), ('multivariateNormal', multivariate_normal)):
+# ---- log-sum-exp
+def log_sum_exp():
+    d = Draws('log-sum-exp')
+    rows = [[f32(v) for v in r] for r in (
+        [0, -88], [-1e-8, -18.42068], [-1e-4, -9.2103901], [0.0], [5, 5], [3e38, 3e38], [-3e38, 3e38], [1e-45, -1e-45], [-103, -103, -104],
+        [-0.6931472, -0.6931472], [-0.69314715, -0.6931472], [-1.0986123, -1.0986123, -1.0986123], [88, 88.7], [-87.3, -88.1, 1e-30])]
+    for n in (1, 2, 3, 8, 40):
+        for _ in range(40):
+            spread = d.choice((1, 10, 100, 1e4))
+            rows.append([f32(d.uniform(-spread, spread)) for _ in range(n)])
+    # Rows of probabilities that nearly sum to one, whose result nearly vanishes.
+    for n in (2, 3, 8):
+        for _ in range(20):
+            rows.append([f32(mpmath.log(p)) for p in normalized([d.uniform(0.01, 1) for _ in range(n)])])
+    return {'logSumExp': [case({'x': row}, lambda x: [log(total([exp(v) for v in x]))]) for row in rows]}
+
+
+for name, make in (('categorical', categorical), ('logSumExp', log_sum_exp), ('multivariateNormal', multivariate_normal)):
     tables = make()
     print(name, {k: len(v) for k, v in tables.items()})
     with open(os.path.join(HERE, name + '.json'), 'w') as file:
