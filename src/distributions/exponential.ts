@@ -57,7 +57,8 @@ const make = scalarFamily({
  * Gradient route: pathwise, draw = noise / rate.
  *
  * @param options - one of `rate`, `logRate`, `scale`, `mean`; scale and mean are both 1 / rate
- * @throws ParameterError when no parameter or more than one is given, or it is not positive and finite.
+ * @throws ParameterError when no parameter or more than one is given, or it is not positive and finite (logRate:
+ *   within ±700).
  * @example
  * ```ts
  * import * as tf from '@tensorflow/tfjs';

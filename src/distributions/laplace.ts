@@ -59,7 +59,8 @@ const make = scalarFamily({
  * Gradient route: pathwise, draw = location + scale · noise.
  *
  * @param options - `location`, and one of `scale`, `logScale`
- * @throws ParameterError when a parameter is missing, given twice, not finite, or the scale is not positive.
+ * @throws ParameterError when a parameter is missing, given twice, not finite, the scale is not positive, or
+ *   logScale lies beyond ±700.
  * @example
  * ```ts
  * import * as tf from '@tensorflow/tfjs';

@@ -63,7 +63,8 @@ const make = scalarFamily({
  * Gradient route: pathwise, draw = mean + sd · noise.
  *
  * @param options - `mean`, and one of `sd`, `logSd`, `variance`, `logVariance`, `precision`
- * @throws ParameterError when a parameter is missing, given twice, not finite, or a spread is not positive.
+ * @throws ParameterError when a parameter is missing, given twice, not finite, a spread is not positive, or its
+ *   logarithm lies beyond ±700 (±1400 for logVariance).
  * @example
  * ```ts
  * import * as tf from '@tensorflow/tfjs';

@@ -71,8 +71,8 @@ const make = scalarFamily({
  * Q(⌊x⌋ + 1, rate), by its kernel alone: not inside `composed`.
  *
  * @param options - one of `rate`, `logRate`, `mean`; rate and mean are the same
- * @throws ParameterError when no parameter or more than one is given, or a rate is not positive and finite; when a rate above 1e15
- *   is drawn from.
+ * @throws ParameterError when no parameter or more than one is given, or a rate is not positive and finite
+ *   (logRate: within ±700); when a rate above 1e15 is drawn from.
  * @example
  * ```ts
  * import * as tf from '@tensorflow/tfjs';
