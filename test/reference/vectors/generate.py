@@ -195,7 +195,7 @@ def multivariate_normal():
                 x = [f32(m + v) for m, v in zip(mean, times(factor, [d.random.gauss(0, 1.5) for _ in range(n)]))]
                 densities.append(case({'x': x, 'mean': mean, 'factor': factor}, lambda x, mean, factor: normal_terms(x, mean, factor), {'kind': kind}))
                 near = d.random.random() < 0.5
-                size = d.log_uniform(1e-5, 1e-1)
+                size = d.log_uniform(3e-7, 1e-1)
                 other = [f32(v * (1 + size * d.uniform(-1, 1))) for v in factor] if near else factor_of(d, n, kind)
                 other_mean = [f32(m + s) for m, s in zip(mean, times(other, [size * d.random.gauss(0, 1) for _ in range(n)]))] if near else x
                 divergences.append(case({'mean': mean, 'factor': factor, 'otherMean': other_mean, 'otherFactor': other}, normal_divergence,
