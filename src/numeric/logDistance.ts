@@ -5,13 +5,13 @@ const LN2_HEAD = 0.6931471805592082;
 const LN2_TAIL = 7.371002565167799e-13;
 
 /**
- * log x − l for a float32 x > 0, with relative accuracy also where the two are close, where the rounding of
+ * log x − l for float32 x > 0 and l, with relative accuracy also where the two are close, where the rounding of
  * log x alone would be left over.
  *
- * There x = m 2^e with m near 1 and log m = 2 atanh q, q = (m − 1) / (m + 1). Each large part is exact (e log 2
- * to forty bits, l, 2q) and added with its rounding error kept (Knuth, The Art of Computer Programming 2,
- * section 4.2.2, theorem B); the small parts are the rest of log 2, the remainder of the quotient by Dekker's
- * splitting (Numer. Math. 18, 1971), and the series of atanh after its first term (DLMF 4.38.1).
+ * There x = m 2^e with m near 1 and log m = 2 atanh q, q = (m − 1) / (m + 1). The large parts cancel without
+ * rounding: e log 2 to forty bits less a float32 l of like size fits a double, and so does its sum with 2q where
+ * little is left of it. The small parts are the rest of log 2, the remainder of the quotient by Dekker's splitting
+ * (Numer. Math. 18, 1971), and the series of atanh after its first term (DLMF 4.38.1).
  */
 export function logDistance(x: number, l: number): number {
   const direct = Math.log(x) - l;
@@ -32,14 +32,6 @@ export function logDistance(x: number, l: number): number {
   const split = q * 134217729.0;
   const high = split - (split - q);
   const remainder = (n - high * d - (q - high) * d) / d;
-  const first = e * LN2_HEAD - l;
-  const second = first + 2.0 * q;
-  const small = e * LN2_TAIL + 2.0 * (remainder + q * atanhTail(q * q));
-  return second + (lostBits(e * LN2_HEAD, -l, first) + lostBits(first, 2.0 * q, second) + small);
-}
-
-/** What the rounded sum of a and b has lost. */
-export function lostBits(a: number, b: number, sum: number): number {
-  const back = sum - a;
-  return a - (sum - back) + (b - back);
+  const large = e * LN2_HEAD - l + 2.0 * q;
+  return large + (e * LN2_TAIL + 2.0 * (remainder + q * atanhTail(q * q)));
 }

@@ -1,6 +1,6 @@
 // The uniform distribution between `lower` and `upper` in double precision.
 // Source: Johnson, Kotz and Balakrishnan, Continuous Univariate Distributions 2 (1995), chapter 26.
-import { lostBits } from '../logDistance.js';
+import { lostBits } from '../lostBits.js';
 import { outside } from '../outside.js';
 
 /**
