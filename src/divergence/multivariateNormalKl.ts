@@ -8,6 +8,7 @@ import { ShapeError } from '../errors.js';
 import { broadcastShapes, broadcastStrides, forEachBroadcast, sizeOf } from '../kernels/layout.js';
 import { log1pmx } from '../numeric/log1pmx.js';
 import { usesComposedForm } from '../tensor/composed.js';
+import { composedSolveLower } from '../tensor/composedTriangular.js';
 import { runHostOperation } from '../tensor/hostOperation.js';
 import { solveLower, solveLowerTransposed } from '../tensor/triangular.js';
 import { addKl } from './registry.js';
@@ -161,18 +162,8 @@ function addGradient(
 }
 
 function composedKl(m1: tf.Tensor, l1: tf.Tensor, m2: tf.Tensor, l2: tf.Tensor, d: number): tf.Tensor {
-  const solve = (columns: tf.Tensor[]): tf.Tensor[] => {
-    const rows = tf.unstack(l2, -2).map((row) => tf.unstack(row, -1));
-    const y: tf.Tensor[] = [];
-    for (let i = 0; i < d; i++) {
-      let sum = columns[i]!;
-      for (let j = 0; j < i; j++) sum = tf.sub(sum, tf.mul(expandTo(rows[i]![j]!, sum), y[j]!));
-      y.push(tf.div(sum, expandTo(rows[i]![i]!, sum)));
-    }
-    return y;
-  };
-  const shift = solve(tf.unstack(tf.sub(m1, m2), -1));
-  const m = solve(tf.unstack(l1, -2));
+  const shift = composedSolveLower(l2, tf.unstack(tf.sub(m1, m2), -1));
+  const m = composedSolveLower(l2, tf.unstack(l1, -2), true);
   const diagonal = (x: tf.Tensor): tf.Tensor => tf.sum(tf.mul(x, tf.eye(d)), -1);
   const squares = [...shift.map((v) => tf.square(v)), ...m.map((row) => tf.sum(tf.square(row), -1))];
   const logs = tf.sum(tf.sub(tf.log(diagonal(l2)), tf.log(diagonal(l1))), -1);
@@ -186,10 +177,4 @@ function composedKl(m1: tf.Tensor, l1: tf.Tensor, m2: tf.Tensor, l2: tf.Tensor, 
     ),
     logs,
   );
-}
-
-function expandTo(scalar: tf.Tensor, like: tf.Tensor): tf.Tensor {
-  return like.shape.length > scalar.shape.length && scalar.shape.length > 0
-    ? tf.expandDims(scalar, -1)
-    : scalar;
 }
