@@ -11,11 +11,17 @@ import { usesComposedForm } from '../tensor/composed.js';
 import { composedExp, composedLogSoftmax, when } from '../tensor/composedMath.js';
 import { detach } from '../tensor/detach.js';
 import { floatsOf, tensorOf } from '../tensor/engine.js';
-import { runHostOperation } from '../tensor/hostOperation.js';
 import { composedTensor, detachedOperand, type Operand, operandData, rawTensor } from '../tensor/operand.js';
+import { runOperandOperation } from '../tensor/operandOperation.js';
 import { logarithm } from '../tensor/transforms.js';
 import { type CategoricalRows, categoricalRows, ownSlope, totalSlope } from './categoricalRows.js';
-import { type Distribution, drawShape, type HasEntropy, type HasMode } from './distribution.js';
+import {
+  type Distribution,
+  drawShape,
+  drawThenScore,
+  type HasEntropy,
+  type HasMode,
+} from './distribution.js';
 import type { OneOf } from './oneOf.js';
 import { type Form, finite, readParameters, unitClosed } from './parameters.js';
 
@@ -152,10 +158,7 @@ function member(operand: Operand, k: number): Categorical {
     categories: k,
     operand,
     draw,
-    drawScored: (stream: Stream, count?: number) => {
-      const value = draw(stream, count);
-      return { value, logDensity: logDensity(value) };
-    },
+    drawScored: drawThenScore(draw, logDensity),
     logDensity,
     logProbabilities,
     // Logarithms keep the order, so that the raw parameter will do.
@@ -208,12 +211,11 @@ function rowOperation(
   outShape: readonly number[],
   { forward, gradient }: RowOperation,
 ): tf.Tensor {
-  const tracked = !operand.constant && operand.source instanceof tf.Tensor;
-  return runHostOperation({
+  return runOperandOperation({
     where,
-    inputs: tracked ? [operand.source as tf.Tensor] : [],
+    operands: [operand],
     outShape,
-    forward: ([raw]) => forward(categoricalRows(operand, raw ?? operandData(operand), k)),
+    forward: ([raw]) => forward(categoricalRows(operand, raw!, k)),
     gradient: (_k, [raw], upstream) =>
       Float32Array.from(gradient(categoricalRows(operand, raw!, k), upstream)),
   });

@@ -37,12 +37,15 @@ export function formulaFrom(where: string, argument: readonly string[], given: u
     parameters: argument,
     value,
     partials,
-    composed:
-      composed ??
-      (() => {
-        throw new GradientError(
-          `${where}: the formula must have a composed form here; got numbers alone; add composed to the definition`,
-        );
-      }),
+    composed: composed ?? numbersAlone(where),
+  };
+}
+
+/** The composed form of a formula that was given as numbers alone: it says so when it is asked for. */
+export function numbersAlone(where: string): () => tf.Tensor {
+  return () => {
+    throw new GradientError(
+      `${where}: the formula must have a composed form here; got numbers alone; add composed to the definition`,
+    );
   };
 }

@@ -26,8 +26,13 @@ export const locationItself: Formula = {
   parameters: ['location'],
 };
 
-/** Draws location + scale · noise: the normal's map of noise to a draw, for other noise. */
+/** location + scale · noise: the normal's map of noise to a draw, whatever the noise. */
+export const affineFormula: Formula = {
+  ...kernel('normalDraw', (e, l, s) => tf.add(l!, tf.mul(s!, e!))),
+  parameters: ['noise', 'location', 'scale'],
+};
+
+/** Draws by {@link affineFormula}. */
 export function affineDraw(noise: NoiseKind): { noise: NoiseKind; formula: Formula } {
-  const formula = kernel('normalDraw', (e, l, s) => tf.add(l!, tf.mul(s!, e!)));
-  return { noise, formula: { ...formula, parameters: ['noise', 'location', 'scale'] } };
+  return { noise, formula: affineFormula };
 }

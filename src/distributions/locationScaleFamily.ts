@@ -1,10 +1,12 @@
 import * as tf from '@tensorflow/tfjs';
-import { GradientError, ParameterError } from '../errors.js';
+import { ParameterError } from '../errors.js';
 import type { Stream } from '../random/stream.js';
 import { describe } from '../tensor/checks.js';
 import { floatsOf } from '../tensor/engine.js';
 import type { Formula } from '../tensor/formula.js';
 import { type FamilyFactory, readDefinition } from './familyDefinition.js';
+import { numbersAlone } from './familyFormula.js';
+import { affineFormula } from './locationScale.js';
 import { scalarFamily } from './scalarFamily.js';
 
 /** A function of one number with its derivative. */
@@ -138,13 +140,7 @@ export function locationScaleFamily<
         const shape = [values.location!.length];
         return tf.tidy(() => floatsOf(definition.draw(stream, shape)).slice());
       },
-      formula: {
-        name: `${family}.draw`,
-        parameters: ['noise', 'location', 'scale'],
-        value: (z, l, s) => l! + s! * z!,
-        partials: [undefined, () => 1, (z) => z!],
-        composed: (z, l, s) => tf.add(l!, tf.mul(s!, z!)),
-      },
+      formula: affineFormula,
     },
     summaries: {
       ...(mean === undefined ? {} : { mean: summary('mean', mean, 1) }),
@@ -172,13 +168,7 @@ function standard(where: string, given: StandardFormula): Complete {
   return {
     value: given.value,
     derivative: given.derivative,
-    composed:
-      given.composed ??
-      (() => {
-        throw new GradientError(
-          `${where}: the formula must have a composed form here; got numbers alone; add composed to the definition`,
-        );
-      }),
+    composed: given.composed ?? numbersAlone(where),
   };
 }
 

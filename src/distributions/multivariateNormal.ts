@@ -7,12 +7,13 @@ import { realVector } from '../support/support.js';
 import { valuesAreChecked } from '../tensor/backend.js';
 import { type ParameterValue, positionText, shapeText } from '../tensor/checks.js';
 import { usesComposedForm } from '../tensor/composed.js';
+import { composedSolveLower } from '../tensor/composedTriangular.js';
 import { tensorOf } from '../tensor/engine.js';
-import { runHostOperation } from '../tensor/hostOperation.js';
 import { composedTensor, detachedOperand, type Operand, operandData } from '../tensor/operand.js';
+import { runOperandOperation } from '../tensor/operandOperation.js';
 import { solveLower, solveLowerTransposed } from '../tensor/triangular.js';
 import type { Distribution, HasEntropy, HasMean, HasMode, HasVariance } from './distribution.js';
-import { drawShape } from './distribution.js';
+import { drawShape, drawThenScore } from './distribution.js';
 import { requirePoints, sumTrailing } from './fold.js';
 import { finite, readParameters, requireParameterName } from './parameters.js';
 
@@ -131,10 +132,7 @@ function member(mean: Operand, factor: Operand, d: number): MultivariateNormal {
     pointShape: Object.freeze([d]),
     operands: { mean, covarianceFactor: factor },
     draw,
-    drawScored: (stream: Stream, count?: number) => {
-      const value = draw(stream, count);
-      return { value, logDensity: score(value, 0) };
-    },
+    drawScored: drawThenScore(draw, (x) => score(x, 0)),
     logDensity: (x: tf.Tensor) => score(x, 0),
     foldedLogDensity: score,
     parameter: (name: 'mean' | 'covarianceFactor') => {
@@ -178,20 +176,17 @@ function meeting(x: readonly number[], mean: readonly number[], factor: readonly
 
 function logDensity(x: tf.Tensor, mean: Operand, factor: Operand, d: number): tf.Tensor {
   const { shape, strides } = meeting(x.shape, mean.shape, factor.shape);
-  const operands = [mean, factor];
-  const tracked = operands.flatMap((o, k) => (!o.constant && o.source instanceof tf.Tensor ? [k] : []));
-  const gather = (data: readonly Float32Array[]): Float32Array[] =>
-    operands.map((o, k) => (tracked.includes(k) ? data[1 + tracked.indexOf(k)]! : operandData(o)));
   const residual = (xs: Float32Array, means: Float32Array, i: number, j: number): Float64Array =>
     Float64Array.from({ length: d }, (_, c) => xs[i * d + c]! - means[j * d + c]!);
 
-  return runHostOperation({
+  const point: Operand = { shape: x.shape, source: x, transform: undefined, constant: false };
+
+  return runOperandOperation({
     where: 'multivariateNormal.logDensity',
-    inputs: [x, ...tracked.map((k) => operands[k]!.source as tf.Tensor)],
+    operands: [point, mean, factor],
     outShape: shape,
     forward: (data) => {
-      const xs = data[0]!;
-      const [means, factors] = gather(data) as [Float32Array, Float32Array];
+      const [xs, means, factors] = data as [Float32Array, Float32Array, Float32Array];
       const out = new Float32Array(sizeOf(shape));
       forEachBroadcast(shape, strides, (index, [i, j, k]) => {
         const at = k! * d * d;
@@ -203,12 +198,9 @@ function logDensity(x: tf.Tensor, mean: Operand, factor: Operand, d: number): tf
       });
       return out;
     },
-    gradient: (which, data, upstream) => {
-      const xs = data[0]!;
-      const [means, factors] = gather(data) as [Float32Array, Float32Array];
-      const target = which === 0 ? -1 : tracked[which - 1]!;
-      const size = target === -1 ? xs.length : target === 0 ? means.length : factors.length;
-      const gradient = new Float64Array(size);
+    gradient: (target, data, upstream) => {
+      const [xs, means, factors] = data as [Float32Array, Float32Array, Float32Array];
+      const gradient = new Float64Array(data[target]!.length);
       forEachBroadcast(shape, strides, (index, [i, j, k]) => {
         const dy = upstream[index]!;
         if (dy === 0) return;
@@ -217,9 +209,9 @@ function logDensity(x: tf.Tensor, mean: Operand, factor: Operand, d: number): tf
         solveLower(factors, at, d, y);
         const w = y.slice();
         solveLowerTransposed(factors, at, d, w);
-        if (target < 1) {
-          const start = (target === -1 ? i! : j!) * d;
-          for (let c = 0; c < d; c++) gradient[start + c]! += (target === -1 ? -dy : dy) * w[c]!;
+        if (target < 2) {
+          const start = (target === 0 ? i! : j!) * d;
+          for (let c = 0; c < d; c++) gradient[start + c]! += (target === 0 ? -dy : dy) * w[c]!;
           return;
         }
         // With y = L⁻¹ r and w = L⁻ᵀ y, the derivative in L is the lower part of w yᵀ − diag(1 / Lᵢᵢ).
@@ -236,14 +228,7 @@ function logDensity(x: tf.Tensor, mean: Operand, factor: Operand, d: number): tf
 function composedLogDensity(x: tf.Tensor, mean: Operand, factor: Operand, d: number): tf.Tensor {
   const l = composedTensor(factor);
   const residual = tf.unstack(tf.sub(x, composedTensor(mean)), -1);
-  const rows = tf.unstack(l, -2).map((row) => tf.unstack(row, -1));
-  // Forward substitution, one coordinate at a time.
-  const y: tf.Tensor[] = [];
-  for (let i = 0; i < d; i++) {
-    let sum: tf.Tensor = residual[i]!;
-    for (let j = 0; j < i; j++) sum = tf.sub(sum, tf.mul(rows[i]![j]!, y[j]!));
-    y.push(tf.div(sum, rows[i]![i]!));
-  }
+  const y = composedSolveLower(l, residual);
   const squares = y.map((v) => tf.square(v)).reduce((a, b) => tf.add(a, b));
   return tf.sub(tf.mul(-0.5, squares), tf.add(tf.sum(tf.log(diagonal(l, d)), -1), d * halfLogTwoPi));
 }

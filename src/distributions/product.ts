@@ -3,7 +3,14 @@ import { ParameterError, ShapeError } from '../errors.js';
 import type { Stream } from '../random/stream.js';
 import type { Support } from '../support/support.js';
 import { describe, requireCount, shapeText } from '../tensor/checks.js';
-import type { Distribution, HasEntropy, HasMean, HasMode, HasVariance } from './distribution.js';
+import {
+  type Distribution,
+  drawThenScore,
+  type HasEntropy,
+  type HasMean,
+  type HasMode,
+  type HasVariance,
+} from './distribution.js';
 import { foldLogDensity, requirePoints, sumTrailing } from './fold.js';
 
 /** A joint distribution of independent coordinates, with the closed forms that its coordinates have. */
@@ -71,6 +78,7 @@ export function product<D extends Distribution>(d: D, axes = 1): Product<D> {
     return foldLogDensity(d, x, axes + fold);
   };
   const closed = d as Partial<HasMean & HasVariance & HasMode & HasEntropy>;
+  const draw = (stream: Stream, count?: number): tf.Tensor => d.draw(stream, count);
   return Object.freeze({
     family,
     route: d.route,
@@ -79,11 +87,8 @@ export function product<D extends Distribution>(d: D, axes = 1): Product<D> {
     pointShape,
     base: d,
     axes,
-    draw: (stream: Stream, count?: number) => d.draw(stream, count),
-    drawScored: (stream: Stream, count?: number) => {
-      const value = d.draw(stream, count);
-      return { value, logDensity: score(value, 0) };
-    },
+    draw,
+    drawScored: drawThenScore(draw, (x) => score(x, 0)),
     logDensity: (x: tf.Tensor) => score(x, 0),
     foldedLogDensity: score,
     detached: () => product(d.detached(), axes),

@@ -8,7 +8,7 @@ import { requireTensor } from '../tensor/checks.js';
 import { floatsOf, tensorOf } from '../tensor/engine.js';
 import { type Formula, kernel } from '../tensor/formula.js';
 import { detachedOperand, type Operand } from '../tensor/operand.js';
-import { type Distribution, drawShape, type Route } from './distribution.js';
+import { type Distribution, drawShape, drawThenScore, type Route } from './distribution.js';
 import { givenNames, type ParameterForms, readParameters, requireParameterName } from './parameters.js';
 
 /** Everything a scalar family is: its formulas, by name. Each formula names the parameters it reads. */
@@ -61,27 +61,22 @@ export function scalarFamily<Family extends string, R extends Route>(
   const { family, parameters } = definition;
   return (options) => {
     const operands = readParameters(family, parameters, options);
-    broadcastShapes(
+    const arrayShape = broadcastShapes(
       family,
       Object.values(operands).map((o) => o.shape),
       givenNames(parameters, options),
     );
     definition.check?.(operands);
-    return member(definition, operands);
+    return member(definition, operands, Object.freeze(arrayShape));
   };
 }
 
 function member<Family extends string, R extends Route>(
   definition: ScalarDefinition<Family, R>,
   operands: Record<string, Operand>,
+  arrayShape: readonly number[],
 ): ScalarDistribution<Family, R> {
   const { family, route, support } = definition;
-  const arrayShape = Object.freeze(
-    broadcastShapes(
-      family,
-      Object.values(operands).map((o) => o.shape),
-    ),
-  );
   // A formula's leading arguments (a point, noise) are given; the rest are parameters, found by name.
   const pick = (formula: Formula, given: readonly Operand[]): Operand[] => [
     ...given,
@@ -138,10 +133,7 @@ function member<Family extends string, R extends Route>(
     pointShape: Object.freeze([]),
     operands,
     draw,
-    drawScored: (stream: Stream, count?: number) => {
-      const value = draw(stream, count);
-      return { value, logDensity: score(value, 0) };
-    },
+    drawScored: drawThenScore(draw, (x) => score(x, 0)),
     logDensity: (x: tf.Tensor) => score(x, 0),
     foldedLogDensity: score,
     parameter: (name: string) => {
@@ -153,6 +145,7 @@ function member<Family extends string, R extends Route>(
       member(
         definition,
         Object.fromEntries(Object.entries(operands).map(([name, o]) => [name, detachedOperand(o)])),
+        arrayShape,
       ),
     ...methods,
   }) as unknown as ScalarDistribution<Family, R>;

@@ -12,8 +12,8 @@ import { broadcastShapes, broadcastStrides, forEachBroadcast, sizeOf } from '../
 import { exponentialRemainder } from '../numeric/exponentialRemainder.js';
 import { usesComposedForm } from '../tensor/composed.js';
 import { composedExp } from '../tensor/composedMath.js';
-import { runHostOperation } from '../tensor/hostOperation.js';
-import { type Operand, operandData } from '../tensor/operand.js';
+import type { Operand } from '../tensor/operand.js';
+import { runOperandOperation } from '../tensor/operandOperation.js';
 import { addKl } from './registry.js';
 
 type Inside = Categorical & { readonly operand: Operand };
@@ -39,15 +39,12 @@ function categoricalKl(q: Inside, p: Inside): tf.Tensor {
   const shape = broadcastShapes('kl', [q.arrayShape, p.arrayShape], 'the arrayShapes of q and p');
   const strides = [broadcastStrides(q.arrayShape, shape), broadcastStrides(p.arrayShape, shape)];
   const operands = [q.operand, p.operand];
-  const tracked = operands.flatMap((o, i) => (!o.constant && o.source instanceof tf.Tensor ? [i] : []));
   const rows = (data: readonly Float32Array[]) =>
-    operands.map((o, i) =>
-      categoricalRows(o, tracked.includes(i) ? data[tracked.indexOf(i)]! : operandData(o), k),
-    ) as [CategoricalRows, CategoricalRows];
+    operands.map((o, i) => categoricalRows(o, data[i]!, k)) as [CategoricalRows, CategoricalRows];
 
-  return runHostOperation({
+  return runOperandOperation({
     where: 'kl',
-    inputs: tracked.map((i) => operands[i]!.source as tf.Tensor),
+    operands,
     outShape: shape,
     forward: (data) => {
       const [a, b] = rows(data);
@@ -57,9 +54,8 @@ function categoricalKl(q: Inside, p: Inside): tf.Tensor {
       });
       return out;
     },
-    gradient: (at, data, upstream) => {
+    gradient: (target, data, upstream) => {
       const [a, b] = rows(data);
-      const target = tracked[at]!;
       const gradient = new Float64Array((target === 0 ? a : b).raw.length);
       forEachBroadcast(shape, strides, (index, [i, j]) => {
         const dy = upstream[index]!;

@@ -6,8 +6,8 @@ import { usesComposedForm } from './composed.js';
 import { copiesOnWrite } from './engine.js';
 import { evaluateScalar } from './evaluateScalar.js';
 import type { Formula } from './formula.js';
-import { runHostOperation } from './hostOperation.js';
-import { composedTensor, live, type Operand, operandData } from './operand.js';
+import { composedTensor, type Operand } from './operand.js';
+import { runOperandOperation } from './operandOperation.js';
 
 /** How a formula is spread over arrays. */
 export interface Spread {
@@ -64,26 +64,21 @@ function applyKernel(
 ): tf.Tensor {
   const outShape = shape.slice(0, shape.length - fold);
   const outStrides = [...broadcastStrides(outShape, outShape), ...new Array<number>(fold).fill(0)];
-  const tracked = operands.flatMap((o, k) => (!o.constant && o.source instanceof tf.Tensor ? [k] : []));
-  // The numbers of every operand: tracked ones as the operation hands them over, the others from here.
-  const gather = (data: readonly Float32Array[]): Float32Array[] =>
-    operands.map((o, k) => (tracked.includes(k) ? data[tracked.indexOf(k)]! : operandData(o)));
   const owner = {};
 
-  return runHostOperation({
+  return runOperandOperation({
     where,
-    inputs: tracked.map((k) => live(operands[k]!.source as tf.Tensor)),
+    operands,
     outShape,
     forward: (data) => {
-      const pass: Pass = { owner, operands: gather(data), shape, outStrides, outSize: sizeOf(outShape) };
+      const pass: Pass = { owner, operands: data, shape, outStrides, outSize: sizeOf(outShape) };
       return evaluate(formula, operands, pass, -1);
     },
-    gradient: (at, data, upstream, backward) => {
-      const k = tracked[at]!;
+    gradient: (k, data, upstream, backward) => {
       requirePartial(where, formula, k);
       const pass: Pass = {
         owner,
-        operands: gather(data),
+        operands: data,
         shape,
         outStrides: broadcastStrides(operands[k]!.shape, shape),
         outSize: sizeOf(operands[k]!.shape),
