@@ -1,6 +1,7 @@
 import * as tf from '@tensorflow/tfjs';
 import { closedKl } from '../divergence/closedForms.js';
 import { DivergenceError, GradientError, ShapeError } from '../errors.js';
+import { sameShape } from '../kernels/layout.js';
 import type { ModelNode } from '../models/node.js';
 import type { Evaluated, Pass } from '../models/pass.js';
 import { shapeText } from '../tensor/checks.js';
@@ -57,7 +58,7 @@ export function latentDivergence(
 
 /** A closed form would broadcast a prior of one coordinate over all those of the recognizer, without a word. */
 function requireSamePoints(name: string, q: readonly number[], p: readonly number[]): void {
-  if (q.length === p.length && q.every((size, i) => size === p[i])) return;
+  if (sameShape(q, p)) return;
   throw new ShapeError(
     `elbo: '${name}' must have points of one shape; got ${shapeText(p)} in the model and ${shapeText(q)} in the recognizer; give both the same sizes`,
   );

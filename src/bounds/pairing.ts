@@ -56,8 +56,6 @@ export type ClosedWhereAll<L extends Nodes, R extends Nodes> = [WithoutClosed<L,
 
 /** A model and a recognizer that fit each other. */
 export interface Pairing {
-  readonly modelNodes: readonly ModelNode[];
-  readonly recognizerNodes: readonly ModelNode[];
   /** Latents in the recognizer's order. */
   readonly latents: readonly {
     readonly name: string;
@@ -101,8 +99,6 @@ export function pairUp(where: string, model: unknown, recognizer: unknown): Pair
   }
   const find = (nodes: readonly ModelNode[], name: string) => nodes.find((n) => n.name === name)!;
   return {
-    modelNodes,
-    recognizerNodes,
     latents: covered.map((name) => ({
       name,
       model: find(modelNodes, name),

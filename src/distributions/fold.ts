@@ -1,5 +1,6 @@
 import * as tf from '@tensorflow/tfjs';
 import { ShapeError } from '../errors.js';
+import { sameShape } from '../kernels/layout.js';
 import { requireTensor, shapeText } from '../tensor/checks.js';
 import type { Distribution } from './distribution.js';
 
@@ -31,7 +32,7 @@ export function sumTrailing(x: tf.Tensor, axes: number): tf.Tensor {
 export function requirePoints(where: string, x: tf.Tensor, pointShape: readonly number[]): void {
   requireTensor(where, 'x', x);
   const trailing = x.shape.slice(Math.max(0, x.shape.length - pointShape.length));
-  if (x.shape.length < pointShape.length || trailing.some((size, i) => size !== pointShape[i])) {
+  if (!sameShape(trailing, pointShape)) {
     throw new ShapeError(
       `${where}: x must end in the point shape ${shapeText(pointShape)}; got shape ${shapeText(x.shape)}; reshape x, or fold another number of axes with product(d, axes)`,
     );

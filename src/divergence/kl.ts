@@ -1,6 +1,7 @@
 import * as tf from '@tensorflow/tfjs';
 import type { Distribution } from '../distributions/distribution.js';
 import { DivergenceError, ParameterError, ShapeError } from '../errors.js';
+import { sameShape } from '../kernels/layout.js';
 import { requireStream, type Stream } from '../random/stream.js';
 import { describe, requireCount, shapeText } from '../tensor/checks.js';
 import { closedKl } from './closedForms.js';
@@ -24,7 +25,7 @@ function requireDistribution(where: string, name: string, d: unknown): asserts d
 }
 
 function requireSamePoints(where: string, q: Distribution, p: Distribution): void {
-  if (q.pointShape.length !== p.pointShape.length || q.pointShape.some((s, i) => s !== p.pointShape[i])) {
+  if (!sameShape(q.pointShape, p.pointShape)) {
     throw new ShapeError(
       `${where}: q and p must have points of one shape; got ${shapeText(q.pointShape)} for ${q.family} and ${shapeText(p.pointShape)} for ${p.family}; fold the same axes with product(d, axes)`,
     );

@@ -24,6 +24,11 @@ export function broadcastShapes(
   return result;
 }
 
+/** Whether two shapes are equal. */
+export function sameShape(a: readonly number[], b: readonly number[]): boolean {
+  return a.length === b.length && a.every((size, i) => size === b[i]);
+}
+
 /** Number of elements of a shape. */
 export function sizeOf(shape: readonly number[]): number {
   return shape.reduce((product, size) => product * size, 1);

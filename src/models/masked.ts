@@ -1,5 +1,6 @@
 import * as tf from '@tensorflow/tfjs';
 import { ParameterError, ShapeError } from '../errors.js';
+import { sameShape } from '../kernels/layout.js';
 import { valuesAreChecked } from '../tensor/backend.js';
 import {
   describe,
@@ -42,8 +43,7 @@ export function masked(values: tf.Tensor, mask: tf.Tensor): Masked {
   requireTensor('masked', 'values', values);
   requireTensor('masked', 'mask', mask);
   const whole = mask.shape.length === 1 && mask.shape[0] === values.shape[0];
-  const same =
-    mask.shape.length === values.shape.length && mask.shape.every((size, i) => size === values.shape[i]);
+  const same = sameShape(mask.shape, values.shape);
   if (!whole && !same) {
     throw new ShapeError(
       `masked: mask must be [rows] or have the shape of values, ${shapeText(values.shape)}; got ${shapeText(mask.shape)}; reshape the mask`,

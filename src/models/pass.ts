@@ -2,6 +2,7 @@ import * as tf from '@tensorflow/tfjs';
 import type { Distribution } from '../distributions/distribution.js';
 import { isProduct } from '../distributions/product.js';
 import { LeadlineError, ModelError, ShapeError } from '../errors.js';
+import { sameShape } from '../kernels/layout.js';
 import type { Stream } from '../random/stream.js';
 import { describe, shapeText } from '../tensor/checks.js';
 import type { DataValue } from './data.js';
@@ -220,7 +221,7 @@ export class Pass {
   #requirePoint(node: ModelNode, distribution: Distribution, entry: Entry): void {
     const point = entry.tensor.shape.slice(1);
     const expected = distribution.pointShape;
-    if (point.length === expected.length && point.every((size, i) => size === expected[i])) return;
+    if (sameShape(point, expected)) return;
     throw new ShapeError(
       `${this.#where}: '${node.name}' must have points of shape ${shapeText(expected)}, as its ${distribution.family} has; got ${shapeText(point)}; reshape the data, or fold another number of axes with product(d, axes)`,
     );

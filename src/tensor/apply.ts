@@ -1,7 +1,7 @@
 import * as tf from '@tensorflow/tfjs';
 import { GradientError } from '../errors.js';
 import { type ArrayOperand, evaluateCompiled, type Upstream } from '../kernels/evaluate.js';
-import { broadcastShapes, broadcastStrides, sizeOf } from '../kernels/layout.js';
+import { broadcastShapes, broadcastStrides, sameShape, sizeOf } from '../kernels/layout.js';
 import { usesComposedForm } from './composed.js';
 import { copiesOnWrite } from './engine.js';
 import { evaluateScalar } from './evaluateScalar.js';
@@ -45,8 +45,7 @@ function applyComposed(
 ): tf.Tensor {
   return tf.tidy(() => {
     const value = formula.composed(...operands.map(composedTensor));
-    const same = value.shape.length === shape.length && value.shape.every((s, i) => s === shape[i]);
-    const full = same ? value : tf.broadcastTo(value, shape);
+    const full = sameShape(value.shape, shape) ? value : tf.broadcastTo(value, shape);
     if (fold === 0) return full;
     return tf.sum(
       full,
