@@ -11,12 +11,26 @@ export type FillName =
   | 'fillLaplace'
   | 'fillLogistic'
   | 'fillGumbel'
+  | 'fillWords'
   | 'fillIntegers'
   | 'fillPermutation'
   | 'fillPoisson'
   | 'fillCategorical'
   | 'fillGamma'
-  | 'fillLogGamma';
+  | 'fillLogGamma'
+  | 'fillScaledGamma'
+  | 'fillLogScaledGamma'
+  | 'fillInverseGamma'
+  | 'fillLogInverseGamma'
+  | 'fillBeta'
+  | 'fillLogBeta'
+  | 'fillLogOddsBeta'
+  | 'fillBetaPrime'
+  | 'fillLogBetaPrime'
+  | 'fillCauchy'
+  | 'fillStudentT'
+  | 'fillInverseGaussian'
+  | 'fillVonMises';
 
 /** Runs `work` with the state of a stream in the module's memory, then reads the advanced state back. */
 export function withState(words: Int32Array, work: (module: KernelModule, state: number) => void): void {
@@ -29,7 +43,7 @@ export function withState(words: Int32Array, work: (module: KernelModule, state:
 }
 
 /**
- * Draws into `out`, block by block, advancing `words`. `parameters`, where given, holds `width` float32 for
+ * Draws into `out`, block by block, advancing `words`. Each array of `parameters` holds `width` float32 for
  * each draw and is passed to the compiled function, block by block as well.
  */
 export function fill(
@@ -38,22 +52,24 @@ export function fill(
   out: Float32Array | Int32Array,
   extra: {
     values?: readonly number[];
-    parameters?: Float32Array;
+    parameters?: readonly Float32Array[];
     width?: number;
     scratchBytes?: number;
   } = {},
 ): void {
-  const { values = [], parameters, width = 1, scratchBytes } = extra;
+  const { values = [], parameters = [], width = 1, scratchBytes } = extra;
   const step = Math.max(1, Math.min(out.length, Math.floor(block / width)));
   withState(words, (module, state) => {
     const at = module.reserve(4 * step);
-    const from = parameters ? module.reserve(4 * step * width) : 0;
+    const from = parameters.map(() => module.reserve(4 * step * width));
     const scratch = scratchBytes ? module.reserve(scratchBytes) : 0;
-    const trailing = [...(parameters ? [from] : []), ...values, ...(scratchBytes ? [scratch] : [])];
+    const trailing = [...from, ...values, ...(scratchBytes ? [scratch] : [])];
     const run = module.call[name]!;
     for (let done = 0; done < out.length; done += step) {
       const n = Math.min(step, out.length - done);
-      if (parameters) module.floats.set(parameters.subarray(width * done, width * (done + n)), from >> 2);
+      parameters.forEach((array, k) => {
+        module.floats.set(array.subarray(width * done, width * (done + n)), from[k]! >> 2);
+      });
       run(state, at, n, ...trailing);
       const source = out instanceof Int32Array ? module.words : module.floats;
       out.set(source.subarray(at >> 2, (at >> 2) + n), done);

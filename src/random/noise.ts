@@ -3,8 +3,10 @@ import { checkCount } from './checks.js';
 import { fill } from './fill.js';
 import { type Stream, wordsOf } from './stream.js';
 
+export * from './draws.js';
+
 /** The standard laws that come without parameters. */
-export type NoiseKind = 'uniform' | 'normal' | 'exponential' | 'laplace' | 'logistic' | 'gumbel';
+export type NoiseKind = 'uniform' | 'normal' | 'exponential' | 'laplace' | 'logistic' | 'gumbel' | 'cauchy';
 
 const fills = {
   uniform: 'fillUniform',
@@ -13,6 +15,7 @@ const fills = {
   laplace: 'fillLaplace',
   logistic: 'fillLogistic',
   gumbel: 'fillGumbel',
+  cauchy: 'fillCauchy',
 } as const;
 
 /** The largest rate whose counts a double still tells apart with room to spare. */
@@ -38,7 +41,7 @@ export function poissonDraws(stream: Stream, rates: Float32Array): Float32Array 
     }
   }
   const out = new Float32Array(rates.length);
-  fill(words, 'fillPoisson', out, { parameters: rates });
+  fill(words, 'fillPoisson', out, { parameters: [rates] });
   return out;
 }
 
@@ -68,35 +71,6 @@ export function categoricalDraws(stream: Stream, logits: Float32Array, k: number
     }
   }
   const out = new Int32Array(logits.length / k);
-  fill(words, 'fillCategorical', out, { parameters: logits, width: k, values: [k], scratchBytes: 8 * k });
-  return out;
-}
-
-/** One gamma draw with scale 1 per shape. Below shape 0.1 it often underflows: use {@link logGammaDraws}. */
-export function gammaDraws(stream: Stream, shapes: Float32Array): Float32Array {
-  return draws(stream, 'gammaDraws', 'fillGamma', shapes);
-}
-
-/** The logarithm of one gamma draw with scale 1 per shape; does not underflow, however small the shape. */
-export function logGammaDraws(stream: Stream, shapes: Float32Array): Float32Array {
-  return draws(stream, 'logGammaDraws', 'fillLogGamma', shapes);
-}
-
-function draws(
-  stream: Stream,
-  caller: string,
-  name: 'fillGamma' | 'fillLogGamma',
-  shapes: Float32Array,
-): Float32Array {
-  const words = wordsOf(caller, stream);
-  for (let i = 0; i < shapes.length; i++) {
-    if (!(shapes[i]! > 0 && shapes[i]! < Number.POSITIVE_INFINITY)) {
-      throw new ParameterError(
-        `${caller}: shape must be positive and finite; got ${shapes[i]} at element ${i}; check what computes the shape`,
-      );
-    }
-  }
-  const out = new Float32Array(shapes.length);
-  fill(words, name, out, { parameters: shapes });
+  fill(words, 'fillCategorical', out, { parameters: [logits], width: k, values: [k], scratchBytes: 8 * k });
   return out;
 }

@@ -1,11 +1,20 @@
 import { expect, it } from 'vitest';
 import {
+  betaDraws,
+  betaPrimeDraws,
   categoricalDraws,
   gammaDraws,
+  inverseGammaDraws,
+  inverseGaussianDraws,
+  logBetaDraws,
   logGammaDraws,
+  logOddsBetaDraws,
   type NoiseKind,
   noise,
   poissonDraws,
+  scaledGammaDraws,
+  studentTDraws,
+  vonMisesDraws,
 } from '../../src/random/noise.js';
 import { stream } from '../../src/random/stream.js';
 
@@ -52,6 +61,7 @@ const kinds: Record<NoiseKind, string> = {
   laplace: '3edfb1c1 3ccf8e7e bef2f24a 3f99257f bf439a98 c05d3db3',
   logistic: 'bdb34509 40a296a1 3fcecea1 3f632c53 3f969195 3f15ebbf',
   gumbel: '3f53fab1 406b3b8b 3f3ed803 be37ab57 3e89c5a0 bf9ec46e',
+  cauchy: '41fa93ad beeb7d48 3eb44e33 3ea4021a 3e3f2bea 3e9677bd',
 };
 it.each(Object.entries(kinds))('first draws: %s', (kind, expected) => {
   expect(bits(noise(stream('golden'), kind as NoiseKind, 6))).toBe(expected);
@@ -81,4 +91,28 @@ it('first integers, order, counts, categories, gammas', () => {
   expect(bits(logGammaDraws(s, Float32Array.of(1e-3, 0.1, 1, 2.5, 1e4)))).toBe(
     'c402d2cc c06397be c07cd268 3ee1f53b 4113633a',
   );
+});
+
+it('first draws of the laws with parameters', () => {
+  const s = stream('golden');
+  const f = (...values: number[]) => Float32Array.from(values);
+  expect([
+    bits(scaledGammaDraws(s, f(0.1, 1, 2.5), f(1e30, 2, 3))),
+    bits(inverseGammaDraws(s, f(0.1, 1, 2.5), f(1, 2, 3))),
+    ...[betaDraws, logBetaDraws, logOddsBetaDraws].map((d) => bits(d(s, f(0.01, 0.5, 3), f(1, 0.5, 2e3)))),
+    bits(betaPrimeDraws(s, f(0.01, 0.5, 3), f(1, 0.5, 2e3), f(1, 2, 3))),
+    bits(studentTDraws(s, f(0.1, 1, 30, 1e8))),
+    bits(vonMisesDraws(s, f(1e-6, 1, 30, 1e8))),
+    bits(inverseGaussianDraws(s, f(1, 1, 1e3, 2), f(1e-3, 1, 30, 1e6))),
+  ]).toEqual([
+    '6e2a53b2 40706d4b 3f850684',
+    '58e8c4cd 408ccc1f 3fa7390f',
+    '3b14587d 3f325161 3ae866e9',
+    'c2af34ce baf2cebf c0db7d16',
+    'c05418d9 be7641c5 c0baccc6',
+    '403ebaf0 414071ae 3b5ce17a',
+    '3e12827e bfb092e0 bf806c58 bf6a6cac',
+    '3fcd1408 3fa87811 bcbc5f48 37b82b33',
+    '3b5f873d 3eb6fa83 41900b6a 3fffd088',
+  ]);
 });

@@ -22,6 +22,7 @@ const seeds: Record<NoiseKind, number> = {
   laplace: 104,
   logistic: 105,
   gumbel: 106,
+  cauchy: 121,
 };
 
 describe.each(Object.keys(seeds) as NoiseKind[])('%s', (kind) => {
@@ -142,6 +143,17 @@ it.each<[string, number, NoiseKind, number, number, (x: number) => number, Law]>
     2,
     (x) => -x,
     { lower: (x) => laws.gumbel.upper(-x), upper: (x) => laws.gumbel.lower(-x) },
+  ],
+  ['Cauchy beyond 1000', 122, 'cauchy', 5, 1000, (x) => x, laws.cauchy],
+  ['Cauchy beyond −1000', 123, 'cauchy', 5, 1000, (x) => -x, laws.cauchy],
+  [
+    'Cauchy within 1/1000',
+    124,
+    'cauchy',
+    5,
+    1000,
+    (x) => Math.abs(1 / x),
+    { lower: (x) => 1 - 2 * laws.cauchy.upper(x), upper: (x) => 2 * laws.cauchy.upper(x) },
   ],
   ['uniform below 1/1000', 116, 'uniform', 5, -0.001, (x) => -x, { lower: (x) => 1 + x, upper: (x) => -x }],
 ])('%s', (_, seed, kind, millions, bound, side, law) => {

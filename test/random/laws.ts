@@ -35,6 +35,20 @@ export function andersonDarling(draws: Float32Array, law: Law): number {
   return -n - sum / n;
 }
 
+/** Both statistics in one pass, for laws that take long to evaluate. */
+export function distances(draws: Float32Array, law: Law): { kolmogorov: number; andersonDarling: number } {
+  const x = draws.slice().sort();
+  const n = x.length;
+  let most = 0;
+  let sum = 0;
+  for (let i = 0; i < n; i++) {
+    const lower = law.lower(x[i]!);
+    most = Math.max(most, lower - i / n, (i + 1) / n - lower);
+    sum += (2 * i + 1) * Math.log(lower) + (2 * (n - i) - 1) * Math.log(law.upper(x[i]!));
+  }
+  return { kolmogorov: Math.sqrt(n) * most, andersonDarling: -n - sum / n };
+}
+
 /** P(χ² ≤ x) and P(χ² > x), from the series or the continued fraction of the incomplete gamma function. */
 export function chiSquaredTails(x: number, degrees: number): { lower: number; upper: number } {
   const a = degrees / 2;
@@ -116,6 +130,9 @@ function normalTail(x: number): number {
   return density / fraction;
 }
 
+/** P(C > x) = arccot(x)/π, which atan of the reciprocal keeps small for large x. */
+const cauchyTail = (x: number): number => (x > 1 ? Math.atan(1 / x) / Math.PI : 0.5 - Math.atan(x) / Math.PI);
+
 export const laws = {
   uniform: { lower: (x) => x, upper: (x) => 1 - x },
   normal: {
@@ -129,6 +146,7 @@ export const laws = {
   },
   logistic: { lower: (x) => 1 / (1 + Math.exp(-x)), upper: (x) => 1 / (1 + Math.exp(x)) },
   gumbel: { lower: (x) => Math.exp(-Math.exp(-x)), upper: (x) => -Math.expm1(-Math.exp(-x)) },
+  cauchy: { lower: (x) => cauchyTail(-x), upper: cauchyTail },
 } satisfies Record<string, Law>;
 
 /** The law of a variable given that it exceeds `bound`. */

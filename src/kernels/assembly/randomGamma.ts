@@ -1,43 +1,54 @@
-// Compiled by AssemblyScript only. Gamma draws with scale 1 and a shape per element (G. Marsaglia and
-// W. W. Tsang, A simple method for generating gamma variables, ACM TOMS 26(3), 2000).
-import { nextExponential, nextNormal } from './_randomScalars';
-import { nextCell } from './_randomWords';
+// Compiled by AssemblyScript only. Gamma draws and their reciprocals, a shape and a scale for each; the same
+// words give the draw and its logarithm.
+import { expOf, gammaExponent, gammaFactor } from './_randomGammas';
+import { storePositive, storeReal } from './_randomRound';
 
-/** Shape ≥ 1. */
-function gammaFromOne(state: usize, shape: f64): f64 {
-  const d = shape - 1.0 / 3.0;
-  const c = 1.0 / Math.sqrt(9.0 * d);
-  while (true) {
-    const x = nextNormal(state);
-    const root = 1.0 + c * x;
-    if (root <= 0.0) continue;
-    const v = root * root * root;
-    const u = nextCell(state);
-    if (u < 1.0 - 0.0331 * x * x * x * x) return d * v;
-    if (Math.log(u) < 0.5 * x * x + d * (1.0 - v + Math.log(v))) return d * v;
-  }
+// @ts-ignore: decorator
+@inline
+function at(array: usize, i: i32): f64 {
+  return <f64>load<f32>(array + 4 * <usize>i);
 }
 
-/**
- * A gamma draw of shape below 1 is one of shape + 1 times U^(1/shape) (their section 6), and −log U is an
- * exponential draw. The product underflows for small shapes; its logarithm does not.
- */
 export function fillGamma(state: usize, out: usize, n: i32, shapes: usize): void {
   for (let i = 0; i < n; i++) {
-    const shape = <f64>load<f32>(shapes + 4 * <usize>i);
-    let draw: f64;
-    if (shape >= 1.0) draw = gammaFromOne(state, shape);
-    else draw = gammaFromOne(state, shape + 1.0) * Math.exp(-nextExponential(state) / shape);
-    store<f32>(out + 4 * <usize>i, <f32>draw);
+    const factor = gammaFactor(state, at(shapes, i));
+    storePositive(out + 4 * <usize>i, factor * expOf(gammaExponent));
   }
 }
 
 export function fillLogGamma(state: usize, out: usize, n: i32, shapes: usize): void {
   for (let i = 0; i < n; i++) {
-    const shape = <f64>load<f32>(shapes + 4 * <usize>i);
-    let draw: f64;
-    if (shape >= 1.0) draw = Math.log(gammaFromOne(state, shape));
-    else draw = Math.log(gammaFromOne(state, shape + 1.0)) - nextExponential(state) / shape;
-    store<f32>(out + 4 * <usize>i, <f32>draw);
+    const factor = gammaFactor(state, at(shapes, i));
+    storeReal(out + 4 * <usize>i, Math.log(factor) + gammaExponent);
+  }
+}
+
+// Products of a float32 scale and a factor stay inside the doubles, so one logarithm does for both.
+
+export function fillScaledGamma(state: usize, out: usize, n: i32, shapes: usize, scales: usize): void {
+  for (let i = 0; i < n; i++) {
+    const factor = at(scales, i) * gammaFactor(state, at(shapes, i));
+    storePositive(out + 4 * <usize>i, factor * expOf(gammaExponent));
+  }
+}
+
+export function fillLogScaledGamma(state: usize, out: usize, n: i32, shapes: usize, scales: usize): void {
+  for (let i = 0; i < n; i++) {
+    const factor = at(scales, i) * gammaFactor(state, at(shapes, i));
+    storeReal(out + 4 * <usize>i, Math.log(factor) + gammaExponent);
+  }
+}
+
+export function fillInverseGamma(state: usize, out: usize, n: i32, shapes: usize, scales: usize): void {
+  for (let i = 0; i < n; i++) {
+    const factor = at(scales, i) / gammaFactor(state, at(shapes, i));
+    storePositive(out + 4 * <usize>i, factor * expOf(-gammaExponent));
+  }
+}
+
+export function fillLogInverseGamma(state: usize, out: usize, n: i32, shapes: usize, scales: usize): void {
+  for (let i = 0; i < n; i++) {
+    const factor = at(scales, i) / gammaFactor(state, at(shapes, i));
+    storeReal(out + 4 * <usize>i, Math.log(factor) - gammaExponent);
   }
 }

@@ -27,3 +27,12 @@ export function fillPermutation(state: usize, out: usize, n: i32): void {
     store<i32>(out + 4 * <usize>j, i);
   }
 }
+
+/** The random bits themselves, as 32-bit words: the lower half of each 64-bit word, then the upper half. */
+export function fillWords(state: usize, out: usize, n: i32): void {
+  for (let i = 0; i < n; i += 2) {
+    const word = nextWord(state);
+    store<u32>(out + 4 * <usize>i, <u32>word);
+    if (i + 1 < n) store<u32>(out + 4 * <usize>i, <u32>(word >> 32), 4);
+  }
+}
