@@ -1,54 +1,18 @@
 // Turns the scalar formulas of src/numeric into one WebAssembly module and a catalogue of its kernels.
 //
-// A formula marked `@kernel` becomes a kernel; `<name>_<parameter>` beside it is its partial derivative.
-// For each the build writes an array loop, compiles all of them with AssemblyScript together with the files
+// Which formulas become kernels: see kernel-sources.mjs. For each the build writes an array loop, compiles all of them with AssemblyScript together with the files
 // of src/kernels/assembly, and embeds the module as text, so that loading it needs no download.
 import { mkdirSync, readdirSync, readFileSync, writeFileSync } from 'node:fs';
-import { dirname, join, relative } from 'node:path';
+import { dirname, join } from 'node:path';
 import { fileURLToPath } from 'node:url';
 import asc from 'assemblyscript/asc';
-import ts from 'typescript';
+import { importsOf, kernelSources } from './kernel-sources.mjs';
 
 const root = join(dirname(fileURLToPath(import.meta.url)), '..');
-const numeric = join(root, 'src/numeric');
 const assembly = join(root, 'src/kernels/assembly');
 const generated = join(root, 'src/kernels/generated');
 
-function filesBelow(folder) {
-  return readdirSync(folder, { withFileTypes: true }).flatMap((entry) => {
-    const path = join(folder, entry.name);
-    if (entry.isDirectory()) return filesBelow(path);
-    return entry.name.endsWith('.ts') ? [path] : [];
-  });
-}
-
-function exportedFunctions(path) {
-  const source = ts.createSourceFile(path, readFileSync(path, 'utf8'), ts.ScriptTarget.ES2022, true);
-  return source.statements
-    .filter(ts.isFunctionDeclaration)
-    .filter((f) => f.modifiers?.some((m) => m.kind === ts.SyntaxKind.ExportKeyword))
-    .map((f) => ({
-      name: f.name.text,
-      // A leading underscore only says that the formula does not read the parameter.
-      parameters: f.parameters.map((p) => p.name.text.replace(/^_/, '')),
-      kernel: ts.getJSDocTags(f).some((tag) => tag.tagName.text === 'kernel'),
-    }));
-}
-
-const kernels = [];
-for (const path of filesBelow(numeric).sort()) {
-  const functions = new Map(exportedFunctions(path).map((f) => [f.name, f]));
-  for (const f of functions.values()) {
-    if (!f.kernel) continue;
-    const partials = f.parameters.map((p) =>
-      functions.has(`${f.name}_${p}`) ? `${f.name}_${p}` : undefined,
-    );
-    kernels.push({ ...f, partials, module: relative(root, path).replace(/\.ts$/, '') });
-  }
-}
-const names = kernels.map((k) => k.name);
-const twice = names.filter((name, i) => names.indexOf(name) !== i);
-if (twice.length > 0) throw new Error(`two kernels share the name ${twice[0]}`);
+const { kernels, derived } = kernelSources(root);
 
 // ---- the generated AssemblyScript: one block loop per formula and partial, and the table that finds it
 const loops = [];
@@ -68,9 +32,11 @@ for (const kernel of kernels) {
   kernel.partialIndex = kernel.partials.map((p) => (p ? addLoop(p, kernel.parameters.length) : -1));
 }
 const imports = kernels
-  .map((k) => `import { ${[k.name, ...k.partials.filter(Boolean)].join(', ')} } from '../../../${k.module}';`)
+  .flatMap(importsOf)
+  .map(([module, names]) => `import { ${names.join(', ')} } from '../../../${module}';`)
   .join('\n');
 const sources = new Map([
+  ['src/kernels/generated/derived.ts', derived],
   [
     'src/kernels/assembly/table.ts',
     `${imports}\n${loops.join('\n')}\nexport const TABLE: StaticArray<(n: i32, out: usize, operands: usize) => void> = [${loops.map((_, i) => `block${i}`).join(', ')}];\n`,
@@ -122,6 +88,7 @@ writeFileSync(
   join(generated, 'moduleBytes.ts'),
   `/** The compiled module, ${bytes.length} bytes, base64. */\nexport const moduleBytes =\n  '${Buffer.from(bytes).toString('base64')}';\n`,
 );
+writeFileSync(join(generated, 'derived.ts'), derived);
 writeFileSync(
   join(generated, 'catalogue.ts'),
   `/** Where each kernel and its partial derivatives (-1: none) stand in the compiled module. */
@@ -138,7 +105,12 @@ ${kernels
 // For the tests: the same formulas as ordinary TypeScript.
 writeFileSync(
   join(generated, 'formulas.ts'),
-  `${kernels.map((k) => `import { ${[k.name, ...k.partials.filter(Boolean)].join(', ')} } from '../../${k.module.replace(/^src\//, '')}.js';`).join('\n')}
+  `${kernels
+    .flatMap(importsOf)
+    .map(
+      ([module, names]) => `import { ${names.join(', ')} } from '../../${module.replace(/^src\//, '')}.js';`,
+    )
+    .join('\n')}
 
 /** Every kernel's formula and partials as ordinary functions, to hold the compiled module to. */
 export const formulas = {

@@ -20,9 +20,17 @@ export type {
   HasCdf,
   HasContinuousForms,
   HasEntropy,
+  HasLogCdf,
+  HasLogDraw,
+  HasLogSurvival,
   HasMean,
   HasMode,
+  HasMoments,
   HasQuantile,
+  HasQuantiles,
+  HasSurvival,
+  HasTails,
+  HasUpperQuantile,
   HasVariance,
   Route,
 } from './distributions/distribution.js';
@@ -37,6 +45,7 @@ export type {
   ScalarSupport,
 } from './distributions/familyDefinition.js';
 export type { FamilyFormula, NumberFormula } from './distributions/familyFormula.js';
+export { type Gumbel, type GumbelOptions, gumbel } from './distributions/gumbel.js';
 export { type ImplicitDefinition, implicitFamily } from './distributions/implicitFamily.js';
 export { type Laplace, type LaplaceOptions, laplace } from './distributions/laplace.js';
 export type { LocationScaleOptions } from './distributions/locationScale.js';

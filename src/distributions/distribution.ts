@@ -58,6 +58,26 @@ export interface HasCdf {
   /** The probability of a point at most `x`; broadcasts like `logDensity`. */
   cdf(x: tf.Tensor): tf.Tensor;
 }
+/** A family whose survival function has a closed form. */
+export interface HasSurvival {
+  /** The probability of a point above `x`, accurate where it is small; broadcasts like `logDensity`. */
+  survival(x: tf.Tensor): tf.Tensor;
+}
+/** A family whose log distribution function has a closed form. */
+export interface HasLogCdf {
+  /** The logarithm of the probability of a point at most `x`, where that underflows too. */
+  logCdf(x: tf.Tensor): tf.Tensor;
+}
+/** A family whose log survival function has a closed form. */
+export interface HasLogSurvival {
+  /** The logarithm of the probability of a point above `x`, where that underflows too. */
+  logSurvival(x: tf.Tensor): tf.Tensor;
+}
+/** A family whose upper quantile function has a closed form. */
+export interface HasUpperQuantile {
+  /** The point above which a member lies with probability `p` in (0, 1), accurate for small `p`. */
+  upperQuantile(p: tf.Tensor): tf.Tensor;
+}
 /** A family whose quantile function has a closed form. */
 export interface HasQuantile {
   /** The point below which a member lies with probability `p` in (0, 1); broadcasts like `logDensity`. */
@@ -66,6 +86,21 @@ export interface HasQuantile {
 
 /** A family with all the closed forms that a continuous scalar family can have. */
 export interface HasContinuousForms extends HasMean, HasVariance, HasMode, HasEntropy, HasCdf, HasQuantile {}
+
+/** The distribution function, its complement and the logarithms of both. */
+export interface HasTails extends HasCdf, HasSurvival, HasLogCdf, HasLogSurvival {}
+
+/** The quantile function, from either end. */
+export interface HasQuantiles extends HasQuantile, HasUpperQuantile {}
+
+/** A family with mean, variance, mode and entropy. */
+export interface HasMoments extends HasMean, HasVariance, HasMode, HasEntropy {}
+
+/** A family whose draws often underflow, and which draws their logarithm too. */
+export interface HasLogDraw {
+  /** The logarithm of what `draw` gives for the same stream, with its own gradient; never −∞. */
+  drawLog(stream: Stream, count?: number): tf.Tensor;
+}
 
 /** The most numbers that one call draws: a float32 array of them still fits every engine. */
 const mostNumbers = 2 ** 30;

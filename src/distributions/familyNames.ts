@@ -3,6 +3,7 @@ export const familyNames: readonly string[] = [
   'bernoulli',
   'categorical',
   'exponential',
+  'gumbel',
   'laplace',
   'logistic',
   'logNormal',

@@ -62,13 +62,19 @@ export interface Form {
 /** The ways to give each parameter of a family, by option name; the first is the one that formulas read. */
 export type ParameterForms = Readonly<Record<string, Readonly<Record<string, Form>>>>;
 
-/** Reads a family's options: exactly one form of each parameter, checked, in the family's order. */
+/**
+ * Reads a family's options: exactly one form of each parameter, checked, in the family's order. `elsewhere` are the
+ * family's other parametrizations, whose names are known but not read.
+ */
 export function readParameters(
   family: string,
   forms: ParameterForms,
   options: object,
+  elsewhere: readonly ParameterForms[] = [],
 ): Record<string, Operand> {
-  requireKnownKeys(family, options, Object.values(forms).flatMap(Object.keys));
+  requireKnownKeys(family, options, [
+    ...new Set([forms, ...elsewhere].flatMap((f) => Object.values(f).flatMap(Object.keys))),
+  ]);
   const given = options as Record<string, ParameterValue | undefined>;
   const result: Record<string, Operand> = {};
   for (const [parameter, ways] of Object.entries(forms)) {

@@ -32,7 +32,7 @@ export function applyFormula(
   const shape = broadcastShapes(where, spread.shape ? [...shapes, spread.shape] : shapes);
   const fold = spread.fold ?? 0;
   const hasKernel = formula.compiled !== undefined || formula.value !== undefined;
-  return usesComposedForm() || !hasKernel
+  return (usesComposedForm() && !formula.kernelAlone) || !hasKernel
     ? applyComposed(formula, operands, shape, fold)
     : applyKernel(where, formula, operands, shape, fold);
 }

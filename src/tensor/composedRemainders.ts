@@ -2,7 +2,7 @@ import * as tf from '@tensorflow/tfjs';
 import { exponentialRemainder } from '../numeric/exponentialRemainder.js';
 import { log1pmx } from '../numeric/log1pmx.js';
 import { chebyshevPolynomial, polynomial } from './chebyshev.js';
-import { composedExp, composedLog1p, withSlope } from './composedMath.js';
+import { composedExp, composedLog1p, when, withSlope } from './composedMath.js';
 
 // What is left of a function after the first terms of its Taylor series, from tensor operations: divergences are
 // made of these, and the differences written out would leave nothing of a divergence below 1e-6.
@@ -54,4 +54,11 @@ function twoSidedExponential(x: tf.Tensor): tf.Tensor {
     (v) => tf.exp(tf.neg(tf.abs(v))),
     (v) => tf.neg(tf.mul(tf.sign(v), twoSidedExponential(v))),
   );
+}
+
+/** log(1 − exp(x)) for x < 0, by the smaller of the two. */
+export function composedLog1mexp(x: tf.Tensor): tf.Tensor {
+  const near = tf.greater(x, -Math.LN2);
+  const [close, far] = [when(near, x, tf.fill(x.shape, -1)), when(near, tf.fill(x.shape, -1), x)];
+  return when(near, tf.log(tf.neg(composedExpm1(close))), composedLog1p(tf.neg(composedExp(far))));
 }

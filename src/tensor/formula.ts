@@ -20,6 +20,8 @@ export interface Formula {
   readonly value?: Scalar;
   readonly partials?: readonly (Scalar | undefined)[];
   composed(...values: tf.Tensor[]): tf.Tensor;
+  /** Whether the kernel runs even where tensor operations are asked for: a draw's implicit derivative has no other. */
+  readonly kernelAlone?: boolean;
 }
 
 /** A change of parametrisation of one parameter, such as a log variance to a standard deviation. */
@@ -29,6 +31,11 @@ export interface Transform {
   value(v: number): number;
   derivative(v: number): number;
   composed(v: tf.Tensor): tf.Tensor;
+}
+
+/** Whether there is a compiled kernel of that name. */
+export function isKernel(name: string): name is KernelName {
+  return Object.hasOwn(catalogue, name);
 }
 
 /** A compiled kernel as a formula, with its composed form beside it. */

@@ -1,5 +1,6 @@
 import * as fc from 'fast-check';
 import * as library from '../../src/index.js';
+import { entries } from '../families/entry.js';
 
 /** A family's parametrizations, and options that it must refuse. */
 interface Entry {
@@ -107,6 +108,12 @@ export const catalogue: Readonly<Record<string, Entry>> = {
     library.categorical,
     [fc.record({ logits: vector(4, real) }), fc.record({ probabilities })],
     [{ probabilities: [0.5, 0.4] }, { logits: [] }, { logits: [0, Number.NaN] }, { logits: 1 }],
+  ),
+  ...Object.fromEntries(
+    Object.entries(entries).map(([family, { factory, arbitraries, invalid, divergence, others }]) => [
+      family,
+      { factory, parametrizations: arbitraries, invalid, divergence, ...(others ? { others } : {}) },
+    ]),
   ),
 };
 

@@ -2,6 +2,7 @@ import { readdirSync, readFileSync } from 'node:fs';
 import { join } from 'node:path';
 import type * as tf from '@tensorflow/tfjs';
 import * as library from '../../src/index.js';
+import { entries } from '../families/entry.js';
 
 const folder = join(import.meta.dirname, '../reference/families');
 
@@ -14,6 +15,8 @@ export interface Reference {
   /** Names in order: `x` or `p`, then parameters as a user gives them; `other…` for the second distribution. */
   readonly arguments: readonly string[];
   readonly transforms: readonly (string | null)[];
+  /** Whether the parameters are those of a joint parametrization. */
+  readonly joint?: boolean;
   readonly partials: readonly string[];
   /** One column per argument, float32 exact. */
   readonly columns: readonly Float32Array[];
@@ -46,6 +49,12 @@ export function references(family: string): Reference[] {
   });
 }
 
+const others: Record<string, readonly string[]> = {
+  sd: ['variance', 'logVariance', 'precision'],
+  scale: ['rate', 'logRate'],
+  rate: ['scale', 'logScale'],
+};
+
 type Factory = (options: Record<string, tf.Tensor | number>) => library.Distribution;
 type Methods = Record<string, (...x: tf.Tensor[]) => tf.Tensor>;
 
@@ -54,16 +63,17 @@ const resting: Record<string, Record<string, number>> = {
   normal: { mean: 0, sd: 1 },
   laplace: { location: 0, scale: 1 },
   logistic: { location: 0, scale: 1 },
+  ...Object.fromEntries(Object.entries(entries).map(([family, { resting = {} }]) => [family, resting])),
 };
 
 function make(family: string, given: Record<string, tf.Tensor>): library.Distribution {
   const factory = (library as unknown as Record<string, Factory>)[family]!;
-  const rest = Object.entries(resting[family] ?? {}).filter(([name]) => {
-    const spread = name === 'sd' || name === 'scale';
-    return spread
-      ? !Object.keys(given).some((g) => g !== 'mean' && g !== 'location')
-      : given[name] === undefined;
-  });
+  // A parameter that is not given in any of its forms: `logScale` stands for `scale`.
+  const asGiven = (name: string): boolean =>
+    [name, `log${name[0]!.toUpperCase()}${name.slice(1)}`, ...(others[name] ?? [])].some(
+      (form) => form in given,
+    );
+  const rest = Object.entries(resting[family] ?? {}).filter(([name]) => !asGiven(name));
   return factory({ ...Object.fromEntries(rest), ...given });
 }
 

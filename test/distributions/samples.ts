@@ -1,8 +1,8 @@
 import type * as tf from '@tensorflow/tfjs';
 import * as library from '../../src/index.js';
+import { entries, type Parametrization } from '../families/entry.js';
 
-/** One way to give a family's parameters, with values that it takes. */
-export type Parametrization = Readonly<Record<string, number | number[] | number[][]>>;
+export type { Parametrization };
 
 /** What the tests need to know of a family beyond its formulas. */
 export interface Sample {
@@ -61,6 +61,12 @@ export const scalars: Readonly<Record<string, Sample>> = {
     parametrizations: [{ rate: 3 }, { logRate: 1.1 }, { mean: 3 }],
     members: { rate: [0.4, 6, 350] },
   },
+  ...Object.fromEntries(
+    Object.entries(entries).map(([family, { factory, parametrizations, members }]) => [
+      family,
+      { make: make(factory), parametrizations, members },
+    ]),
+  ),
 };
 
 /** The families whose parameters are vectors. */

@@ -1,6 +1,6 @@
 #!/usr/bin/env python3
 """Writes the reference values of the scalar families: every function of every family in every parametrization,
-with its first derivatives, at random and adversarial float32 arguments. mpmath at 420 digits and again at 500.
+with its first derivatives, at random and adversarial float32 arguments. mpmath at two precisions, which must agree to 25 digits.
 
     python3 generate.py            all families
     python3 generate.py normal     one
@@ -19,9 +19,30 @@ import mpmath
 from mpmath import mp, mpf
 
 import points
+import scalar
 from dual import variables
 from machinery import text
-from scalar import FUNCTIONS, SPREADS, form
+
+HERE = os.path.dirname(os.path.abspath(__file__))
+OWN = sorted(name[7:-3] for name in os.listdir(HERE) if name.startswith('family_') and name.endswith('.py'))
+FUNCTIONS, SPREADS, DIGITS, JOINTS = dict(scalar.FUNCTIONS), dict(scalar.SPREADS), {}, {}
+form = scalar.form
+
+
+def load(family):
+    """A family with a file of its own: see family_gumbel.py."""
+    module = __import__('family_' + family)
+    FUNCTIONS[family], SPREADS[family] = module.FUNCTIONS, module.PARAMETERS
+    points.POINTS[family] = module.POINTS
+    scalar.FORMS.update({f'{family}.{name}': entry for name, entry in getattr(module, 'FORMS', {}).items()})
+    DIGITS[family] = getattr(module, 'DIGITS', {})
+    JOINTS[family] = getattr(module, 'JOINTS', [])
+
+
+def digits(family, function):
+    """Two precisions. The families without a file of their own are so cheap that theirs are high for every function."""
+    low = DIGITS[family].get(function, DIGITS[family].get('', 60)) if family in DIGITS else 420
+    return low, low + (40 if family in DIGITS else 80)
 
 
 def unprefixed(name):
@@ -47,10 +68,11 @@ def value_and_slopes(family, names, formula, args):
     return [(mpmath.fsum(c), mpmath.fsum(c, absolute=True)) for c in columns]
 
 
-def agreed(family, names, formula, args):
-    with mp.workdps(420):
+def agreed(family, function, names, formula, args):
+    few, many = digits(family, function)
+    with mp.workdps(few):
         low = value_and_slopes(family, names, formula, args)
-    with mp.workdps(500):
+    with mp.workdps(many):
         high = value_and_slopes(family, names, formula, args)
     with mp.workdps(60):
         for (a, _), (b, _) in zip(low, high):
@@ -64,32 +86,68 @@ def agreed(family, names, formula, args):
     return high
 
 
-def record(family, function, names):
-    kernel, formula, natural, partials = FUNCTIONS[family][function]
-    natural = natural.split()
-    wanted = [k for k, n in enumerate(natural) if n in partials.split()]
+def record(family, function, names, kernel, formula, natural, partials, rows_at, joint=False):
+    wanted = [k for k, n in enumerate(natural) if n in partials]
     rows = []
-    for args in points.points(family, function, names):
-        columns = agreed(family, names, formula, args)
+    for args in rows_at:
+        columns = agreed(family, function, names, formula, args)
         columns = [columns[0]] + [columns[1 + k] for k in wanted]
         with mp.workdps(40):
             sizes = ['0' if s <= 1.001 * abs(v) else '%.3g' % float(min(s, 1e300)) for v, s in columns]
-        rows.append('[' + ', '.join(['%.9g' % a for a in args] + [text(v) for v, _ in columns] + sizes) + ']')
+        written = text if family not in DIGITS else short
+        rows.append('[' + ', '.join(['%.9g' % a for a in args] + [written(v) for v, _ in columns] + sizes) + ']')
     head = {
         'function': function, 'kernel': kernel, 'arguments': names,
-        'transforms': [form(family, unprefixed(n))[0] for n in names],
-        'partials': [names[k] for k in wanted],
+        'transforms': [None if joint else form(family, unprefixed(n))[0] for n in names],
+        'partials': [names[k] for k in wanted], **({'joint': True} if joint else {}),
     }
     print(f'{family}.{function}({", ".join(names)}): {len(rows)} points', flush=True)
     return json.dumps(head)[:-1] + ', "rows": [\n' + ',\n'.join(rows) + ']}'
 
 
+def short(value):
+    """Thirteen digits: 1e-13 of a value is 1e-6 float32 units."""
+    full = text(value)
+    return full if full.startswith('"') or len(full) < 15 else '%.13g' % float(full)
+
+
+def plain(family):
+    for function, (kernel, formula, natural, partials) in FUNCTIONS[family].items():
+        natural = natural.split()
+        for at, names in enumerate(parametrizations(family, natural)):
+            # Behind a transform the formula is the same; fewer points show that the transform is applied.
+            few = {'count': 45, 'corners': 25} if at > 0 and family in DIGITS else {}
+            yield record(family, function, names, kernel, formula, natural, partials.split(),
+                         points.points(family, function, names, **few))
+
+
+def joint(family):
+    """Every function once more in the parametrizations that give several parameters together."""
+    for front, inputs, convert, made in JOINTS[family]:
+        inputs = inputs.split()
+        for function, (kernel, formula, natural, partials) in FUNCTIONS[family].items():
+            natural, partials = natural.split(), partials.split()
+            own = [n for n in natural if n not in ('x', 'p')]
+            if function == 'kl' or not own:
+                continue
+            lead = [n for n in natural if n in ('x', 'p')]
+            names = lead + inputs
+
+            def converted(*args, lead=lead, own=own, formula=formula):
+                found = dict(zip(lead, args)) | convert(*args[len(lead):])
+                return formula(*[found[n] for n in lead + own])
+            rows = made(family, function, lead)
+            yield record(family, function, names, front + kernel[len(family):], converted, names,
+                         [n for n in lead if n in partials] + inputs, rows, joint=True)
+
+
 def write(family):
-    records = [record(family, function, names) for function, entry in FUNCTIONS[family].items()
-               for names in parametrizations(family, entry[2].split())]
-    with open(os.path.join(os.path.dirname(os.path.abspath(__file__)), family + '.json'), 'w') as file:
+    if family in OWN:
+        load(family)
+    records = list(plain(family)) + (list(joint(family)) if family in OWN else [])
+    with open(os.path.join(HERE, family + '.json'), 'w') as file:
         file.write('[\n' + ',\n'.join(records) + '\n]\n')
 
 
-for family in sys.argv[1:] or FUNCTIONS:
+for family in sys.argv[1:] or list(scalar.FUNCTIONS) + OWN:
     write(family)

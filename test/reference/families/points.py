@@ -283,11 +283,13 @@ POINTS['logNormal'] = {
 }
 
 
-def points(family, function, names, count=220):
+def points(family, function, names, count=220, corners=None):
     """Arguments in the given forms, by name: 'x' and 'p' as they are, parameters through their inverse."""
-    make, corners = POINTS[family][function]
+    make, adversarial = POINTS[family][function]
+    step_by = max(1, len(adversarial) // corners) if corners else 1
+    adversarial = list(adversarial)[::step_by]
     plain = [n[5].lower() + n[6:] if n.startswith('other') else n for n in names]
-    found = Draws(f'{family} {function} {" ".join(names)}').many(count, make) + list(corners)
+    found = Draws(f'{family} {function} {" ".join(names)}').many(count, make) + adversarial
     rows = [tuple(f32(v) if n in 'xp' else raw(family, n, v) for n, v in zip(plain, point)) for point in found]
     for at, name in enumerate(plain):
         if name == 'probability':

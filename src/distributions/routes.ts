@@ -1,0 +1,152 @@
+import type * as tf from '@tensorflow/tfjs';
+import type { NoiseKind } from '../random/noise.js';
+import type { Stream } from '../random/stream.js';
+import type { Support } from '../support/support.js';
+import type { Formula } from '../tensor/formula.js';
+import { noComposedForm } from '../tensor/noComposedForm.js';
+import type { Operand } from '../tensor/operand.js';
+import type { Joint } from './joint.js';
+import { affineFormula } from './locationScale.js';
+import type { ParameterForms } from './parameters.js';
+import { kernelNamed, placedKernel, placedKinds } from './placed.js';
+import { type ScalarDefinition, type ScalarDistribution, scalarFamily } from './scalarFamily.js';
+
+// The routes by which the library's own families are made. Each formula is a compiled kernel named after the
+// family, such as `gumbelLogDensity`; what is given here is its composed form.
+
+type Composed = (...values: tf.Tensor[]) => tf.Tensor | number;
+type Sampler = (stream: Stream, parameters: Record<string, Float32Array>) => Float32Array;
+
+/** What has a closed form: the composed form of the family's kernel of that name, or a formula that it shares. */
+type Form = Composed | Formula;
+
+/** What a family can have beside its log density and its draw. */
+export type OwnForms = Partial<
+  Record<
+    | 'mean'
+    | 'variance'
+    | 'mode'
+    | 'entropy'
+    | 'cdf'
+    | 'survival'
+    | 'logCdf'
+    | 'logSurvival'
+    | 'quantile'
+    | 'upperQuantile',
+    Form
+  >
+>;
+
+interface OwnFamily<Family extends string> {
+  readonly family: Family;
+  /** The front of its kernels' names; the family's own name unless given. */
+  readonly kernels?: string;
+  readonly support: Support;
+  readonly parameters: ParameterForms;
+  /** Parameters that are the same for all members, such as the scale of a chi-squared. */
+  readonly fixed?: Readonly<Record<string, number>>;
+  /** Parametrizations that give several parameters together. */
+  readonly joints?: readonly Joint[];
+  readonly logDensity: Composed;
+  readonly forms: OwnForms;
+  check?(parameters: Record<string, Operand>): void;
+}
+
+/** A family with a scale, and a location where it has a parameter of that name; composed forms are in z. */
+export interface OwnLocationScale<Family extends string> extends OwnFamily<Family> {
+  /** Standard noise: the standard draw itself, or what the kernel `<family>Draw` makes of it. */
+  readonly draw: { readonly noise: NoiseKind | readonly NoiseKind[]; readonly composed?: Composed };
+}
+
+/** A family whose draws are a function of standard noise and the parameters. */
+export interface OwnQuantile<Family extends string> extends OwnFamily<Family> {
+  readonly draw: { readonly noise: NoiseKind | readonly NoiseKind[]; readonly composed: Composed };
+}
+
+/** A family with an exact sampler; the kernel `<family>Draw` has the draw's implicit derivatives. */
+export interface OwnImplicit<Family extends string> extends OwnFamily<Family> {
+  readonly sampler: Sampler;
+  /** Another sampler for the draw's logarithm, whose derivatives are those of the kernel `<family>LogDraw`. */
+  readonly logSampler?: Sampler;
+  /** Whether the composed forms are the standard member's, in z. */
+  readonly placed?: boolean;
+}
+
+type Factory<Family extends string> = (options: object) => ScalarDistribution<Family, 'pathwise'>;
+
+const capital = (name: string): string => name[0]!.toUpperCase() + name.slice(1);
+
+/** The formulas of a family: those of any member, or carried from the standard one where `located` says how. */
+function formulas<Family extends string>(
+  own: OwnFamily<Family>,
+  located: boolean | undefined,
+): Pick<ScalarDefinition<Family, 'pathwise'>, 'logDensity' | 'summaries' | 'functions'> & {
+  named(name: string, composed: Composed): Formula;
+} {
+  const named = (name: string, composed: Composed): Formula => {
+    const full = `${own.kernels ?? own.family}${capital(name)}`;
+    return located === undefined
+      ? kernelNamed(full, composed as (...values: tf.Tensor[]) => tf.Tensor)
+      : placedKernel(full, placedKinds[name]!, located, composed);
+  };
+  const pick = (names: readonly (keyof OwnForms)[]): Record<string, Formula> =>
+    Object.fromEntries(
+      names.flatMap((name) => {
+        const form = own.forms[name];
+        return form === undefined ? [] : [[name, typeof form === 'function' ? named(name, form) : form]];
+      }),
+    );
+  return {
+    logDensity: named('logDensity', own.logDensity),
+    summaries: pick(['mean', 'variance', 'mode', 'entropy']),
+    functions: pick(['cdf', 'survival', 'logCdf', 'logSurvival', 'quantile', 'upperQuantile']),
+    named,
+  };
+}
+
+function common<Family extends string>(own: OwnFamily<Family>) {
+  const { family, support, parameters, fixed, joints, kernels, check } = own;
+  return {
+    family,
+    route: 'pathwise' as const,
+    support,
+    parameters,
+    kernels: kernels ?? family,
+    ...(fixed ? { fixed } : {}),
+    ...(joints ? { joints } : {}),
+    ...(check ? { check } : {}),
+  };
+}
+
+/** A family by its standard member: location and scale follow. */
+export function locationScaleRoute<Family extends string>(own: OwnLocationScale<Family>): Factory<Family> {
+  const { named, ...found } = formulas(own, 'location' in own.parameters);
+  const { noise, composed } = own.draw;
+  return scalarFamily({
+    ...common(own),
+    ...found,
+    draw: { noise, formula: composed ? named('draw', composed) : affineFormula },
+  });
+}
+
+/** A family by a function of noise, which is its quantile function read at the noise's probability. */
+export function quantileRoute<Family extends string>(own: OwnQuantile<Family>): Factory<Family> {
+  const { named, ...found } = formulas(own, undefined);
+  const { noise, composed } = own.draw;
+  return scalarFamily({ ...common(own), ...found, draw: { noise, formula: named('draw', composed) } });
+}
+
+/** A family by an exact sampler; the draw's gradient comes by implicit differentiation. */
+export function implicitRoute<Family extends string>(own: OwnImplicit<Family>): Factory<Family> {
+  const { named: _, ...found } = formulas(own, own.placed ? 'location' in own.parameters : undefined);
+  const slope = (name: string): Formula => {
+    const full = `${own.kernels ?? own.family}${name}`;
+    return { ...kernelNamed(full, noComposedForm(full)), kernelAlone: true };
+  };
+  return scalarFamily({
+    ...common(own),
+    ...found,
+    draw: { sampler: own.sampler, formula: slope('Draw') },
+    ...(own.logSampler ? { drawLog: { sampler: own.logSampler, formula: slope('LogDraw') } } : {}),
+  });
+}
