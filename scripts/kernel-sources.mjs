@@ -37,8 +37,11 @@ function exportedFunctions(path) {
     }));
 }
 
-const signature = (name, parameters, body) =>
-  `export function ${name}(${parameters.map((p) => `${p}: number`).join(', ')}): number {\n  ${body}\n}`;
+/** A function's text; a parameter that its body does not read gets a leading underscore. */
+function signature(name, parameters, body) {
+  const written = parameters.map((p) => `${new RegExp(`\\b${p}\\b`).test(body) ? '' : '_'}${p}: number`);
+  return `export function ${name}(${written.join(', ')}): number {\n  ${body}\n}`;
+}
 
 /** What a member's formula is, and its partial derivatives, given the standard one's. */
 const kinds = {

@@ -17,6 +17,8 @@ export interface Gumbel extends Distribution<'gumbel', 'pathwise'>, HasMoments, 
 
 const eulerGamma = 0.5772156649015329;
 const rarity = (z: tf.Tensor): tf.Tensor => composedExp(tf.neg(z));
+// Below z = −40 nothing is left of a probability; its derivative must not be zero times infinity.
+const held = (z: tf.Tensor): tf.Tensor => rarity(tf.maximum(z, -40));
 
 const make = locationScaleRoute({
   family: 'gumbel',
@@ -29,10 +31,10 @@ const make = locationScaleRoute({
     mode: locationItself,
     variance: () => Math.PI ** 2 / 6,
     entropy: () => 1 + eulerGamma,
-    cdf: (z) => composedExp(tf.neg(rarity(z!))),
-    survival: (z) => tf.neg(composedExpm1(tf.neg(rarity(z!)))),
+    cdf: (z) => composedExp(tf.neg(held(z!))),
+    survival: (z) => tf.neg(composedExpm1(tf.neg(held(z!)))),
     logCdf: (z) => tf.neg(rarity(z!)),
-    logSurvival: (z) => composedLog1mexp(tf.neg(rarity(z!))),
+    logSurvival: (z) => composedLog1mexp(tf.neg(held(z!))),
     quantile: (p) => tf.neg(tf.log(tf.neg(tf.log(p!)))),
     upperQuantile: (p) => tf.neg(tf.log(tf.neg(composedLog1p(tf.neg(p!))))),
   },

@@ -1,8 +1,5 @@
 import * as tf from '@tensorflow/tfjs';
-import type { Distribution } from '../distributions/distribution.js';
-import { isScalar, type ScalarDistribution } from '../distributions/scalarFamily.js';
 import { broadcastShapes } from '../kernels/layout.js';
-import { applyFormula } from '../tensor/apply.js';
 import { composedAbs, composedExp, composedSigmoid, composedSoftplus, when } from '../tensor/composedMath.js';
 import {
   composedEvenRemainder,
@@ -11,29 +8,13 @@ import {
   composedLog1pmx,
 } from '../tensor/composedRemainders.js';
 import { detach } from '../tensor/detach.js';
-import { type Formula, kernel } from '../tensor/formula.js';
-import { addKl, type ClosedKlPairs } from './registry.js';
+import { kernel } from '../tensor/formula.js';
+import { addScalarKl } from './addScalarKl.js';
 
 // Closed divergences of scalar families. Each formula reads q's parameters, then p's, in the families' order.
 // Sources: the normal, exponential and Poisson forms in Kullback, Information Theory and Statistics (1959),
 // chapters 2 and 9; the Laplace, uniform and Bernoulli ones by direct integration. The accurate arrangements
 // of each stand beside the double-precision formulas.
-
-function add(pair: keyof ClosedKlPairs, formula: Formula): void {
-  addKl(pair, (q, p, fold) => {
-    const [a, b] = [scalar(q), scalar(p)];
-    const shape = broadcastShapes('kl', [a.arrayShape, b.arrayShape], 'the arrayShapes of q and p');
-    return applyFormula('kl', formula, [...Object.values(a.operands), ...Object.values(b.operands)], {
-      shape,
-      fold,
-    });
-  });
-}
-
-function scalar(d: Distribution): ScalarDistribution {
-  if (!isScalar(d)) throw new TypeError(`kl: ${d.family} is not a scalar family`);
-  return d;
-}
 
 /** log(s / t), whose ratio may leave float32 where the logarithms do not. */
 function logRatio(s: tf.Tensor, t: tf.Tensor): tf.Tensor {
@@ -91,14 +72,14 @@ function composedBernoulliKl(logit: tf.Tensor, otherLogit: tf.Tensor): tf.Tensor
 
 /** Registers the closed forms. */
 export function registerScalarKl(): void {
-  add('normal|normal', normalKl);
+  addScalarKl('normal|normal', normalKl);
   // The divergence does not change under the exponential map.
-  add('logNormal|logNormal', normalKl);
-  add(
+  addScalarKl('logNormal|logNormal', normalKl);
+  addScalarKl(
     'laplace|laplace',
     kernel('laplaceKl', (l, s, m, t) => composedLaplaceKl(l!, s!, m!, t!)),
   );
-  add(
+  addScalarKl(
     'uniform|uniform',
     kernel('uniformKl', (a, b, c, d) =>
       when(
@@ -108,15 +89,15 @@ export function registerScalarKl(): void {
       ),
     ),
   );
-  add(
+  addScalarKl(
     'exponential|exponential',
     kernel('exponentialKl', (r, s) => relativeExcess(s!, r!)),
   );
-  add(
+  addScalarKl(
     'bernoulli|bernoulli',
     kernel('bernoulliKl', (a, b) => composedBernoulliKl(a!, b!)),
   );
-  add(
+  addScalarKl(
     'poisson|poisson',
     kernel('poissonKl', (r, s) => composedPoissonKl(r!, s!)),
   );

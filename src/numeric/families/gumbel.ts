@@ -42,7 +42,7 @@ export function gumbelLogSurvival(z: number): number {
   return z > 40.0 ? -z : log1mexp(-Math.exp(-z));
 }
 export function gumbelLogSurvival_z(z: number): number {
-  return z > 40.0 ? -1.0 : z < -7.0 ? -0.0 : -Math.exp(-z) * log1mexp_x(-Math.exp(-z));
+  return z > 40.0 ? -1.0 : z < -7.0 ? -0.0 : Math.exp(-z) * log1mexp_x(-Math.exp(-z));
 }
 
 // −log(−l) for l = log p, from l + 1 where that is small: the logarithm crosses zero there.
