@@ -17,6 +17,7 @@ import { cdfIsIntegral, cdfIsSum, quantileInverts, quantileOfCounts } from './la
 import { route } from './laws/route.js';
 import { sameBits } from './laws/sameBits.js';
 import { shapes } from './laws/shapes.js';
+import { logarithmOf, survivalComplements, upperQuantileInverts } from './laws/tails.js';
 import { type Factory, type Member, type Subject, subjectOf } from './subject.js';
 
 /** How the laws of a distribution are tried. */
@@ -114,11 +115,25 @@ function scalarLaws(
     ...(d.quantile
       ? [one('the quantile inverts the cdf', discrete ? quantileOfCounts : quantileInverts)]
       : []),
+    ...(discrete ? [] : tailLaws(d, one)),
     ...(d.mean || d.variance || d.entropy
       ? [
           one('mean, variance and entropy are those of the density', moments),
           one('the derivatives of mean, variance and entropy are right', closedFormDerivatives),
         ]
+      : []),
+  ];
+}
+
+function tailLaws(d: Member, one: (name: string, property: (subject: Subject) => void) => Law): Law[] {
+  return [
+    ...(d.cdf && d.survival ? [one('the survival function complements the cdf', survivalComplements)] : []),
+    ...(d.cdf && d.logCdf ? [one('logCdf is the logarithm of the cdf', logarithmOf('logCdf', 'cdf'))] : []),
+    ...(d.survival && d.logSurvival
+      ? [one('logSurvival is the logarithm of the survival function', logarithmOf('logSurvival', 'survival'))]
+      : []),
+    ...(d.survival && d.upperQuantile
+      ? [one('the upper quantile inverts the survival function', upperQuantileInverts)]
       : []),
   ];
 }

@@ -1,20 +1,11 @@
 import * as tf from '@tensorflow/tfjs';
-import type {
-  Distribution,
-  HasCdf,
-  HasEntropy,
-  HasMean,
-  HasMode,
-  HasQuantile,
-  HasVariance,
-} from '../distributions/distribution.js';
+import type { Distribution, HasMoments, HasQuantiles, HasTails } from '../distributions/distribution.js';
 import { stream as makeStream, type Stream } from '../random/stream.js';
 import { flatten, type NestedNumbers } from '../tensor/checks.js';
 import type { Setting } from './law.js';
 
 /** A distribution with whichever closed forms it has. */
-export type Member = Distribution &
-  Partial<HasMean & HasVariance & HasMode & HasEntropy & HasCdf & HasQuantile>;
+export type Member = Distribution & Partial<HasMoments & HasTails & HasQuantiles>;
 
 /** A factory and what it makes, as laws see it. */
 export type Factory = (options: object) => Member;

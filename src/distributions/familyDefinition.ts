@@ -16,9 +16,13 @@ import type {
   Distribution,
   HasCdf,
   HasEntropy,
+  HasLogCdf,
+  HasLogSurvival,
   HasMean,
   HasMode,
   HasQuantile,
+  HasSurvival,
+  HasUpperQuantile,
   HasVariance,
   Route,
 } from './distribution.js';
@@ -53,8 +57,16 @@ export interface ClosedFormulas {
   readonly entropy?: FamilyFormula;
   /** The distribution function, from the point and the parameters. */
   readonly cdf?: FamilyFormula;
-  /** Its inverse, from a probability and the parameters. */
+  /** Its complement, accurate where it is small. */
+  readonly survival?: FamilyFormula;
+  /** The logarithm of the distribution function. */
+  readonly logCdf?: FamilyFormula;
+  /** The logarithm of the survival function. */
+  readonly logSurvival?: FamilyFormula;
+  /** The inverse of the distribution function, from a probability and the parameters. */
   readonly quantile?: FamilyFormula;
+  /** The inverse of the survival function, from a probability and the parameters. */
+  readonly upperQuantile?: FamilyFormula;
 }
 
 /** What every definition of a user's family has. */
@@ -73,7 +85,11 @@ export type ClosedOf<Definition> = (Definition extends { mean: unknown } ? HasMe
   (Definition extends { mode: unknown } ? HasMode : unknown) &
   (Definition extends { entropy: unknown } ? HasEntropy : unknown) &
   (Definition extends { cdf: unknown } ? HasCdf : unknown) &
-  (Definition extends { quantile: unknown } ? HasQuantile : unknown);
+  (Definition extends { survival: unknown } ? HasSurvival : unknown) &
+  (Definition extends { logCdf: unknown } ? HasLogCdf : unknown) &
+  (Definition extends { logSurvival: unknown } ? HasLogSurvival : unknown) &
+  (Definition extends { quantile: unknown } ? HasQuantile : unknown) &
+  (Definition extends { upperQuantile: unknown } ? HasUpperQuantile : unknown);
 
 /** A member of a user's family. */
 export type FamilyMember<
@@ -117,7 +133,11 @@ export function readDefinition(
     'mode',
     'entropy',
     'cdf',
+    'survival',
+    'logCdf',
+    'logSurvival',
     'quantile',
+    'upperQuantile',
     ...others,
   ]);
   const { family, support = 'real', parameters } = definition;
@@ -167,6 +187,9 @@ export function closedFormulas(
     );
   return {
     summaries: pick(['mean', 'variance', 'mode', 'entropy'], []),
-    functions: { ...pick(['cdf'], ['x']), ...pick(['quantile'], ['p']) },
+    functions: {
+      ...pick(['cdf', 'survival', 'logCdf', 'logSurvival'], ['x']),
+      ...pick(['quantile', 'upperQuantile'], ['p']),
+    },
   };
 }

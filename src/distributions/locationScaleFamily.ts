@@ -7,6 +7,7 @@ import type { Formula } from '../tensor/formula.js';
 import { type FamilyFactory, readDefinition } from './familyDefinition.js';
 import { numbersAlone } from './familyFormula.js';
 import { affineFormula } from './locationScale.js';
+import { placedKinds, placedNumbers } from './placed.js';
 import { scalarFamily } from './scalarFamily.js';
 
 /** A function of one number with its derivative. */
@@ -29,8 +30,16 @@ export interface LocationScaleDefinition<Family extends string> {
   draw(stream: Stream, shape: readonly number[]): tf.Tensor;
   /** The standard member's distribution function. */
   readonly cdf?: StandardFormula;
-  /** Its inverse. */
+  /** Its complement, accurate where it is small. */
+  readonly survival?: StandardFormula;
+  /** The logarithm of the distribution function. */
+  readonly logCdf?: StandardFormula;
+  /** The logarithm of the survival function. */
+  readonly logSurvival?: StandardFormula;
+  /** The inverse of the distribution function. */
   readonly quantile?: StandardFormula;
+  /** The inverse of the survival function. */
+  readonly upperQuantile?: StandardFormula;
   /** The standard member's mean. */
   readonly mean?: number;
   /** The standard member's variance. */
@@ -93,48 +102,38 @@ export function locationScaleFamily<
       `${where}: draw of ${family} must be a function of a stream and a shape; got ${describe(definition.draw)}; pass (stream, shape) => … returning standard draws`,
     );
   }
-  const summary = (name: string, value: number, power: number): Formula => {
+  const constant = (name: 'mean' | 'variance' | 'mode' | 'entropy', value: number): Formula => {
     if (typeof value !== 'number' || !Number.isFinite(value)) {
       throw new ParameterError(
         `${where}: ${name} of ${family} must be a finite number, the standard member's; got ${describe(value)}; leave it out where there is none`,
       );
     }
-    return power === 2
-      ? {
-          name: `${family}.${name}`,
-          parameters: ['scale'],
-          value: (s) => value * s! * s!,
-          partials: [(s) => 2 * value * s!],
-          composed: (s) => tf.mul(value, tf.square(s!)),
-        }
-      : {
-          name: `${family}.${name}`,
-          parameters: ['location', 'scale'],
-          value: (l, s) => l! + s! * value,
-          partials: [() => 1, () => value],
-          composed: (l, s) => tf.add(l!, tf.mul(s!, value)),
-        };
+    const numbers = { value: () => value, derivative: () => 0 };
+    return placedNumbers(`${family}.${name}`, placedKinds[name]!, numbers, () => value);
   };
-  const { mean, variance, mode, entropy, cdf, quantile } = definition;
+  const member = (
+    name: 'cdf' | 'survival' | 'logCdf' | 'logSurvival' | 'quantile' | 'upperQuantile',
+    given: StandardFormula,
+  ): Formula => {
+    const f = standard(`${family}.${name}`, given);
+    return placedNumbers(`${family}.${name}`, placedKinds[name]!, f, f.composed);
+  };
+  const pick = <Key extends keyof LocationScaleDefinition<Family>>(
+    names: readonly Key[],
+    formula: (name: Key, given: never) => Formula,
+  ): Record<string, Formula> =>
+    Object.fromEntries(
+      names.flatMap((name) => {
+        const given = definition[name];
+        return given === undefined ? [] : [[name, formula(name, given as never)]];
+      }),
+    );
   return scalarFamily({
     family,
     route: 'pathwise',
     support,
     parameters,
-    logDensity: {
-      name: `${family}.logDensity`,
-      parameters: ['x', 'location', 'scale'],
-      value: (x, l, s) => density.value((x! - l!) / s!) - Math.log(s!),
-      partials: [
-        (x, l, s) => density.derivative((x! - l!) / s!) / s!,
-        (x, l, s) => -density.derivative((x! - l!) / s!) / s!,
-        (x, l, s) => {
-          const z = (x! - l!) / s!;
-          return -(z * density.derivative(z) + 1) / s!;
-        },
-      ],
-      composed: (x, l, s) => tf.sub(density.composed(tf.div(tf.sub(x!, l!), s!)), tf.log(s!)),
-    },
+    logDensity: placedNumbers(`${family}.logDensity`, 'density', density, density.composed),
     draw: {
       sampler: (stream, values) => {
         const shape = [values.location!.length];
@@ -142,18 +141,8 @@ export function locationScaleFamily<
       },
       formula: affineFormula,
     },
-    summaries: {
-      ...(mean === undefined ? {} : { mean: summary('mean', mean, 1) }),
-      ...(mode === undefined ? {} : { mode: summary('mode', mode, 1) }),
-      ...(variance === undefined ? {} : { variance: summary('variance', variance, 2) }),
-      ...(entropy === undefined ? {} : { entropy: entropyFormula(family, entropy) }),
-    },
-    functions: {
-      ...(cdf === undefined ? {} : { cdf: cdfFormula(family, standard(`${family}.cdf`, cdf)) }),
-      ...(quantile === undefined
-        ? {}
-        : { quantile: quantileFormula(family, standard(`${family}.quantile`, quantile)) }),
-    },
+    summaries: pick(['mean', 'mode', 'variance', 'entropy'], constant),
+    functions: pick(['cdf', 'survival', 'logCdf', 'logSurvival', 'quantile', 'upperQuantile'], member),
   }) as never;
 }
 
@@ -169,39 +158,5 @@ function standard(where: string, given: StandardFormula): Complete {
     value: given.value,
     derivative: given.derivative,
     composed: given.composed ?? numbersAlone(where),
-  };
-}
-
-function entropyFormula(family: string, entropy: number): Formula {
-  return {
-    name: `${family}.entropy`,
-    parameters: ['scale'],
-    value: (s) => entropy + Math.log(s!),
-    partials: [(s) => 1 / s!],
-    composed: (s) => tf.add(entropy, tf.log(s!)),
-  };
-}
-
-function cdfFormula(family: string, cdf: Complete): Formula {
-  return {
-    name: `${family}.cdf`,
-    parameters: ['x', 'location', 'scale'],
-    value: (x, l, s) => cdf.value((x! - l!) / s!),
-    partials: [
-      (x, l, s) => cdf.derivative((x! - l!) / s!) / s!,
-      (x, l, s) => -cdf.derivative((x! - l!) / s!) / s!,
-      (x, l, s) => (-((x! - l!) / s!) * cdf.derivative((x! - l!) / s!)) / s!,
-    ],
-    composed: (x, l, s) => cdf.composed(tf.div(tf.sub(x!, l!), s!)),
-  };
-}
-
-function quantileFormula(family: string, quantile: Complete): Formula {
-  return {
-    name: `${family}.quantile`,
-    parameters: ['p', 'location', 'scale'],
-    value: (p, l, s) => l! + s! * quantile.value(p!),
-    partials: [(p, _l, s) => s! * quantile.derivative(p!), () => 1, (p) => quantile.value(p!)],
-    composed: (p, l, s) => tf.add(l!, tf.mul(s!, quantile.composed(p!))),
   };
 }

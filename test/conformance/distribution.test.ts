@@ -5,6 +5,7 @@ import { type DistributionLawOptions, LawError, lawsOfDistribution } from '../..
 import {
   type Distribution,
   exponential,
+  gumbel,
   laplace,
   logistic,
   normal,
@@ -342,5 +343,38 @@ describe('what is no question for the laws is refused', () => {
       [bits, shapes, cuts, leak, route].map((name) => `product<normal>: ${name}`),
     );
     expect([...(await failing(laws)).keys()]).toEqual([]);
+  });
+});
+
+describe('a mistake in a tail is caught by its law', () => {
+  test.each<[string, (d: Whole) => object, string[]]>([
+    ['nothing', () => ({}), []],
+    [
+      'a survival function of the point before',
+      (d) => ({ survival: (x: tf.Tensor) => d.survival(plus(x, -0.01)) }),
+      [
+        'logSurvival is the logarithm of the survival function',
+        'the survival function complements the cdf',
+        'the upper quantile inverts the survival function',
+      ],
+    ],
+    [
+      'a logarithm of twice the probability',
+      (d) => ({ logCdf: (x: tf.Tensor) => plus(d.logCdf(x), Math.LN2) }),
+      ['logCdf is the logarithm of the cdf'],
+    ],
+    [
+      'a log survival function that gives up far out',
+      (d) => ({ logSurvival: (x: tf.Tensor) => tf.maximum(d.logSurvival(x), -4) }),
+      ['logSurvival is the logarithm of the survival function'],
+    ],
+    [
+      'an upper quantile by way of 1 − p',
+      (d) => ({ upperQuantile: (p: tf.Tensor) => d.quantile(tf.sub(1, p)) }),
+      ['the upper quantile inverts the survival function'],
+    ],
+  ])('%s', async (_what, spoil, laws) => {
+    const found = await failing(lawsOfDistribution(spoiled(gumbel, spoil), arbitrary, { seed: 13, runs: 3 }));
+    expect([...found.keys()].sort()).toEqual(laws);
   });
 });

@@ -10,7 +10,11 @@ export interface Whole extends library.Distribution {
   variance(): tf.Tensor;
   entropy(): tf.Tensor;
   cdf(x: tf.Tensor): tf.Tensor;
+  survival(x: tf.Tensor): tf.Tensor;
+  logCdf(x: tf.Tensor): tf.Tensor;
+  logSurvival(x: tf.Tensor): tf.Tensor;
   quantile(p: tf.Tensor): tf.Tensor;
+  upperQuantile(p: tf.Tensor): tf.Tensor;
   parameter(name: string): tf.Tensor;
 }
 
@@ -24,13 +28,15 @@ export const arbitrary = fc.record({
   scale: fc.double({ min: 0.5, max: 2, noNaN: true }),
 });
 
-type Base = library.Logistic | library.Exponential | library.Poisson;
+type Base = library.Gumbel | library.Logistic | library.Exponential | library.Poisson;
+
+const tails = ['cdf', 'survival', 'logCdf', 'logSurvival'];
 
 /** A right factory with some parts put in the place of its own. */
 export function spoiled<O extends object>(
   factory: (options: O) => Base,
   spoil: (d: Whole) => object,
-  keep: readonly string[] = ['mean', 'variance', 'entropy', 'cdf', 'quantile'],
+  keep: readonly string[] = ['mean', 'variance', 'entropy', ...tails, 'quantile', 'upperQuantile'],
 ): (options: O) => library.Distribution {
   const wrap = (d: Whole): Whole => {
     const forms = Object.fromEntries(

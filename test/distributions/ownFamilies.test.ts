@@ -286,7 +286,7 @@ describe('wrong definitions have one clear message each', () => {
             cfd: (z: tf.Tensor) => z,
           }),
         ),
-      "quantileFamily: options must be among family, support, parameters, mean, variance, mode, entropy, cdf, quantile, logDensity; got 'cfd'; remove or rename it",
+      "quantileFamily: options must be among family, support, parameters, mean, variance, mode, entropy, cdf, survival, logCdf, logSurvival, quantile, upperQuantile, logDensity; got 'cfd'; remove or rename it",
     ],
     [
       () => byStandard({ location: 0, scale: -1 }),

@@ -7,7 +7,7 @@ const eulerGamma = 0.57721566490153286061;
 
 /** Log density, −z − exp(−z). @kernel located density */
 export function gumbelLogDensity(z: number): number {
-  return -z - Math.exp(-z);
+  return z < -800.0 ? -Infinity : -z - Math.exp(-z);
 }
 export function gumbelLogDensity_z(z: number): number {
   return Math.expm1(-z);
