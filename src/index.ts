@@ -83,6 +83,9 @@ export {
   StreamError,
   TrainingError,
 } from './errors.js';
+export { affineMap, expMap, sigmoidMap, softplusMap } from './maps/elementary.js';
+export { type PushedForms, type Pushforward, pushforward } from './maps/pushforward.js';
+export type { SmoothMap } from './maps/smoothMap.js';
 export type { DataValue } from './models/data.js';
 export { DirectedModel, directed, type ModelData, type TakenName } from './models/directed.js';
 export { type Masked, masked } from './models/masked.js';

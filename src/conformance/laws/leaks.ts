@@ -31,8 +31,12 @@ export function leaks(subject: Subject): void {
     for (const name of ['mean', 'variance', 'mode', 'entropy'] as const) {
       if (d[name]) requireLeft(name, 1, () => d[name]!());
     }
-    if (d.cdf) requireLeft('cdf', 1, () => d.cdf!(x));
-    if (d.quantile) requireLeft('quantile', 1, () => d.quantile!(p));
+    for (const name of ['cdf', 'survival', 'logCdf', 'logSurvival'] as const) {
+      if (d[name]) requireLeft(name, 1, () => d[name]!(x));
+    }
+    for (const name of ['quantile', 'upperQuantile'] as const) {
+      if (d[name]) requireLeft(name, 1, () => d[name]!(p));
+    }
   } finally {
     tf.dispose(parameters);
   }
