@@ -2,22 +2,13 @@ import * as tf from '@tensorflow/tfjs';
 import { afterAll, describe, expect, it } from 'vitest';
 import { evaluateCompiled } from '../../src/kernels/evaluate.js';
 import { catalogue } from '../../src/kernels/generated/catalogue.js';
-import { formulas } from '../../src/kernels/generated/formulas.js';
-import { overflow, score, ulp32 } from '../numeric/ulp.js';
+import { argumentsText, errorsOf, insideDouble } from '../accuracy/errors.js';
+import { score, ulp32 } from '../numeric/ulp.js';
 import { families, publicFunction, type Reference, references, titleOf } from './families.js';
 
-// Half a unit is the rounding to float32, a hundredth what the double inside may add. Where a sum crosses zero,
-// 2^-50 of the sizes of its terms is allowed, divergences excepted. Behind a change of parametrization, so is what
-// one rounding of the double parameter does: 2^-52 of it.
+// Half a unit is the rounding to float32, a hundredth what the double inside may add.
 const bar = 0.51;
 const share = 0.01;
-const crossing = 2 ** -50;
-const rounding = 2 ** -52;
-const nudge = 2 ** -30;
-
-type Scalar = (...values: number[]) => number;
-type Kernels = Record<string, { value: Scalar; partials: readonly (Scalar | undefined)[] }>;
-const kernels = formulas as unknown as Kernels;
 
 function catalogueOf(name: string): { index: number; partials: readonly number[] } {
   return (catalogue as Record<string, { index: number; partials: readonly number[] }>)[name]!;
@@ -31,46 +22,12 @@ interface Worst {
 /** The worst error in float32 units beyond what a zero crossing allows. */
 function worst(reference: Reference, which: number, got: ArrayLike<number>, effects: Float64Array): Worst {
   let result: Worst = { error: 0, text: '' };
-  const exact = reference.exact[which]!;
-  const strict = reference.function === 'kl';
-  for (let i = 0; i < exact.length; i++) {
-    const size = strict ? 0 : reference.sizes[which]![i]!;
-    if (Math.abs(got[i]! - exact[i]!) <= Math.max(crossing * size, effects[i]!)) continue;
-    // Infinities are as exact as numbers.
-    const error = Object.is(got[i]! + 0, exact[i]! + 0) ? 0 : score(got[i]!, exact[i]!);
-    if (error > result.error) {
-      const args = reference.columns.map((c, k) => `${reference.arguments[k]} ${c[i]}`).join(', ');
-      result = { error, text: `at ${args}: got ${got[i]}, exact ${exact[i]} (${error} units)` };
-    }
-  }
+  errorsOf(reference, which, got, effects).forEach((error, i) => {
+    if (error <= result.error) return;
+    const what = `got ${got[i]}, exact ${reference.exact[which]![i]} (${error} units)`;
+    result = { error, text: `at ${argumentsText(reference, i)}: ${what}` };
+  });
   return result;
-}
-
-/** A result as the formulas give it in double precision, and what one rounding of a transformed parameter does. */
-function insideDouble(reference: Reference, which: number): { doubles: Float64Array; effects: Float64Array } {
-  const kernel = kernels[reference.kernel]!;
-  const partial = which === 0 ? -1 : reference.arguments.indexOf(reference.partials[which - 1]!);
-  const f = partial < 0 ? kernel.value : kernel.partials[partial]!;
-  const count = reference.exact[0]!.length;
-  const [doubles, effects] = [new Float64Array(count), new Float64Array(count)];
-  for (let i = 0; i < count; i++) {
-    const raw = reference.columns.map((c) => c[i]!);
-    const args = raw.map((v, k) => {
-      const transform = reference.transforms[k];
-      return transform ? kernels[transform]!.value(v) : v;
-    });
-    const transform = partial < 0 ? undefined : reference.transforms[partial];
-    const slope = transform ? kernels[transform]!.partials[0]!(raw[partial]!) : 1;
-    const value = f(...args) * slope;
-    for (const [k, name] of reference.transforms.entries()) {
-      if (!name) continue;
-      const moved = f(...args.map((v, j) => (j === k ? v * (1 + nudge) : v))) * slope;
-      if (Number.isFinite(moved - value)) effects[i]! += (Math.abs(moved - value) / nudge) * rounding;
-    }
-    // The rounding decides whether a value overflows, nothing before it.
-    doubles[i] = Math.abs(value) >= overflow ? Math.sign(value) * Infinity : value;
-  }
-  return { doubles, effects };
 }
 
 /** A draw comes from a sampler: how it moves with the parameters is the compiled kernel's, at the point given. */
