@@ -3,7 +3,7 @@ import { type KernelModule, kernelModule } from '../kernels/loader.js';
 /** Draws made between copies out of the module's memory: small enough to stay in a processor's cache. */
 const block = 65536;
 
-/** The compiled functions that write `n` draws at `out` and leave the generator's state behind them. */
+/** The compiled functions that write `n` draws at `out`, from the stream that is open. */
 export type FillName =
   | 'fillUniform'
   | 'fillNormal'
@@ -32,13 +32,15 @@ export type FillName =
   | 'fillInverseGaussian'
   | 'fillVonMises';
 
-/** Runs `work` with the state of a stream in the module's memory, then reads the advanced state back. */
-export function withState(words: Int32Array, work: (module: KernelModule, state: number) => void): void {
+/** Runs `work` with a stream open in the compiled module, then reads the advanced state back. */
+export function withStream(words: Int32Array, work: (module: KernelModule) => void): void {
   const module = kernelModule();
   module.begin();
   const state = module.reserve(32);
   module.words.set(words, state >> 2);
-  work(module, state);
+  module.call.openStream!(state);
+  work(module);
+  module.call.closeStream!(state);
   words.set(module.words.subarray(state >> 2, (state >> 2) + 8));
 }
 
@@ -59,7 +61,7 @@ export function fill(
 ): void {
   const { values = [], parameters = [], width = 1, scratchBytes } = extra;
   const step = Math.max(1, Math.min(out.length, Math.floor(block / width)));
-  withState(words, (module, state) => {
+  withStream(words, (module) => {
     const at = module.reserve(4 * step);
     const from = parameters.map(() => module.reserve(4 * step * width));
     const scratch = scratchBytes ? module.reserve(scratchBytes) : 0;
@@ -70,7 +72,7 @@ export function fill(
       parameters.forEach((array, k) => {
         module.floats.set(array.subarray(width * done, width * (done + n)), from[k]! >> 2);
       });
-      run(state, at, n, ...trailing);
+      run(at, n, ...trailing);
       const source = out instanceof Int32Array ? module.words : module.floats;
       out.set(source.subarray(at >> 2, (at >> 2) + n), done);
     }

@@ -9,15 +9,15 @@ import { nextCell } from './_randomWords';
 export let gammaExponent: f64 = 0.0;
 
 /** Shape ≥ 1. */
-function gammaFromOne(state: usize, shape: f64): f64 {
+function gammaFromOne(shape: f64): f64 {
   const d = shape - 1.0 / 3.0;
   const c = 1.0 / Math.sqrt(9.0 * d);
   while (true) {
-    const x = nextNormal(state);
+    const x = nextNormal();
     const root = 1.0 + c * x;
     if (root <= 0.0) continue;
     const v = root * root * root;
-    const u = nextCell(state);
+    const u = nextCell();
     if (u < 1.0 - 0.0331 * x * x * x * x) return d * v;
     if (Math.log(u) < 0.5 * x * x + d * (1.0 - v + Math.log(v))) return d * v;
   }
@@ -27,13 +27,13 @@ function gammaFromOne(state: usize, shape: f64): f64 {
  * The draw is the factor times exp(gammaExponent). One of shape below 1 is one of shape + 1 times U^(1/shape)
  * (their section 6), and −log U is an exponential draw.
  */
-export function gammaFactor(state: usize, shape: f64): f64 {
+export function gammaFactor(shape: f64): f64 {
   if (shape >= 1.0) {
     gammaExponent = 0.0;
-    return gammaFromOne(state, shape);
+    return gammaFromOne(shape);
   }
-  const factor = gammaFromOne(state, shape + 1.0);
-  gammaExponent = -nextExponential(state) / shape;
+  const factor = gammaFromOne(shape + 1.0);
+  gammaExponent = -nextExponential() / shape;
   return factor;
 }
 
