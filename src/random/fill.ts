@@ -46,7 +46,8 @@ export function withStream(words: Int32Array, work: (module: KernelModule) => vo
 
 /**
  * Draws into `out`, block by block, advancing `words`. Each array of `parameters` holds `width` float32 for
- * each draw and is passed to the compiled function, block by block as well.
+ * each draw and is passed to the compiled function, block by block as well. Where `refuse` is given they must be
+ * positive and finite: it is told the first that is not, and the stream stays where it was.
  */
 export function fill(
   words: Int32Array,
@@ -57,9 +58,10 @@ export function fill(
     parameters?: readonly Float32Array[];
     width?: number;
     scratchBytes?: number;
+    refuse?: (parameter: number, element: number) => never;
   } = {},
 ): void {
-  const { values = [], parameters = [], width = 1, scratchBytes } = extra;
+  const { values = [], parameters = [], width = 1, scratchBytes, refuse } = extra;
   const step = Math.max(1, Math.min(out.length, Math.floor(block / width)));
   withStream(words, (module) => {
     const at = module.reserve(4 * step);
@@ -71,6 +73,8 @@ export function fill(
       const n = Math.min(step, out.length - done);
       parameters.forEach((array, k) => {
         module.floats.set(array.subarray(width * done, width * (done + n)), from[k]! >> 2);
+        const wrong = refuse ? module.call.firstNotPositive!(from[k]!, width * n) : -1;
+        if (wrong >= 0) refuse!(k, width * done + wrong);
       });
       run(at, n, ...trailing);
       const source = out instanceof Int32Array ? module.words : module.floats;

@@ -40,6 +40,24 @@ export function signed(x: f64, word: u64): f64 {
   return reinterpret<f64>(reinterpret<u64>(x) | ((word & 256) << 55));
 }
 
+// For loops that keep their place among the words themselves: a draw that its first word decides, or −1 where more
+// words are needed, to be had from nextNormal and nextExponential.
+// @ts-ignore: decorator
+@inline
+export function quickHalfNormal(word: u64): f64 {
+  const layer = layerOf(normalLayers, word);
+  const place = placeOf(word);
+  return place < load<f64>(layer, 8) ? place * load<f64>(layer) : -1.0;
+}
+
+// @ts-ignore: decorator
+@inline
+export function quickExponential(word: u64): f64 {
+  const layer = layerOf(exponentialLayers, word);
+  const place = placeOf(word);
+  return place < load<f64>(layer, 8) ? place * load<f64>(layer) : -1.0;
+}
+
 /** Finishes a half-normal draw whose first word fell outside the inner part of its layer. */
 function normalRest(first: u64): f64 {
   let word = first;

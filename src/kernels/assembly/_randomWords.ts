@@ -138,7 +138,12 @@ export function takeUpTo(to: usize): void {
 // @ts-ignore: decorator
 @inline
 export function nextCell(): f64 {
-  return <f64>(<i64>((nextWord() >> 11) | 1)) * (1.0 / 9007199254740992.0);
+  return cellOf(nextWord());
+}
+// @ts-ignore: decorator
+@inline
+export function cellOf(word: u64): f64 {
+  return <f64>(<i64>((word >> 11) | 1)) * (1.0 / 9007199254740992.0);
 }
 
 /**

@@ -1,5 +1,5 @@
 // Compiled by AssemblyScript only. Draws made of normals: Cauchy, Student's t, inverse Gaussian, von Mises.
-import { expOf, gammaExponent, gammaFactor } from './_randomGammas';
+import { drawGamma, expOf, exponentOf, factorOf } from './_randomGammas';
 import { storeAngle, storePositive, storeReal } from './_randomRound';
 import { nextNormal } from './_randomScalars';
 import { nextCell, nextFine } from './_randomWords';
@@ -27,8 +27,8 @@ export function fillStudentT(out: usize, n: i32, degreesOfFreedom: usize): void 
   for (let i = 0; i < n; i++) {
     const half = 0.5 * at(degreesOfFreedom, i);
     const normal = nextNormal();
-    const factor = gammaFactor(half);
-    storeReal(out + 4 * <usize>i, normal * Math.sqrt(half / factor) * expOf(-0.5 * gammaExponent));
+    drawGamma(half);
+    storeReal(out + 4 * <usize>i, normal * Math.sqrt(half / factorOf(0)) * expOf(-0.5 * exponentOf(0)));
   }
 }
 
