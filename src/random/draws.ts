@@ -105,28 +105,21 @@ function draws(
   name: FillName,
   positive: Readonly<Record<string, Float32Array>>,
 ): Float32Array {
-  const words = wordsOf(caller, stream);
+  const state = wordsOf(caller, stream);
+  const words = Object.keys(positive);
   const parameters = Object.values(positive);
   const { length } = parameters[0]!;
-  for (const [word, values] of Object.entries(positive)) {
-    if (values.length !== length) {
-      throw new ShapeError(
-        `${caller}: parameters must have one element per draw each; got ${parameters.map((p) => p.length).join(' and ')}; broadcast them first`,
-      );
-    }
-    checkPositive(caller, word, values);
+  if (parameters.some((values) => values.length !== length)) {
+    throw new ShapeError(
+      `${caller}: parameters must have one element per draw each; got ${parameters.map((p) => p.length).join(' and ')}; broadcast them first`,
+    );
   }
+  const refuse = (k: number, i: number): never => {
+    throw new ParameterError(
+      `${caller}: ${words[k]} must be positive and finite; got ${parameters[k]![i]} at element ${i}; check what computes the ${words[k]}`,
+    );
+  };
   const out = new Float32Array(length);
-  fill(words, name, out, { parameters });
+  fill(state, name, out, { parameters, refuse });
   return out;
-}
-
-function checkPositive(caller: string, word: string, values: Float32Array): void {
-  for (let i = 0; i < values.length; i++) {
-    if (!(values[i]! > 0 && values[i]! < Number.POSITIVE_INFINITY)) {
-      throw new ParameterError(
-        `${caller}: ${word} must be positive and finite; got ${values[i]} at element ${i}; check what computes the ${word}`,
-      );
-    }
-  }
 }

@@ -1,7 +1,7 @@
 import * as tf from '@tensorflow/tfjs';
 import { StreamError } from '../errors.js';
 import { checkBelow, checkCount, sizeOf } from './checks.js';
-import { type FillName, fill, withState } from './fill.js';
+import { type FillName, fill, withStream } from './fill.js';
 import { fromHex, seedWords, toHex } from './seedWords.js';
 
 /**
@@ -266,9 +266,9 @@ export function wordsOf(caller: string, candidate: Stream): Int32Array {
 export function permutationArray(source: Stream, n: number, caller = 'permutation'): Int32Array {
   checkCount(caller, 'n', n);
   const out = new Int32Array(n);
-  withState(wordsOf(caller, source), (module, state) => {
+  withStream(wordsOf(caller, source), (module) => {
     const at = module.reserve(4 * n);
-    module.call.fillPermutation!(state, at, n);
+    module.call.fillPermutation!(at, n);
     out.set(module.words.subarray(at >> 2, (at >> 2) + n));
   });
   return out;

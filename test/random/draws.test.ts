@@ -340,6 +340,25 @@ it.each(positive)('%s refuses what is not positive and finite', (name, draw, fir
   );
 });
 
+it('finds a wrong parameter anywhere, and leaves the stream where it was', () => {
+  const s = stream(1590);
+  const before = JSON.stringify(s.save());
+  for (const [length, place] of [
+    [3, 2],
+    [4, 0],
+    [9, 8],
+    [200_003, 131_077],
+    [200_003, 200_002],
+  ] as const) {
+    const shapes = new Float32Array(length).fill(1);
+    shapes[place] = Number.NaN;
+    expect(() => gammaDraws(s, shapes)).toThrow(
+      `gammaDraws: shape must be positive and finite; got NaN at element ${place}; check what computes the shape`,
+    );
+  }
+  expect(JSON.stringify(s.save())).toBe(before);
+});
+
 it('the laws of one or three parameters refuse likewise', () => {
   const one = Float32Array.of(1);
   const wrong = Float32Array.of(-2);

@@ -2,19 +2,36 @@
 // are made of. Of a 64-bit word, bits 0-7 choose the layer, bit 8 the sign, and bits 12-63 the place within
 // the layer: no two of the three share a bit.
 import { nextCell, nextFine, nextWord } from './_randomWords';
-import { EXPONENTIAL_TAIL, exponentialLayers, NORMAL_TAIL, normalLayers } from './_randomZiggurat';
+import {
+  EXPONENTIAL_TAIL,
+  exponentialHeights,
+  exponentialLayers,
+  NORMAL_TAIL,
+  normalHeights,
+  normalLayers,
+} from './_randomZiggurat';
 
+/** The exponent bits of 1, and what turns 52 bits behind them into the middle of their cell of (0, 1). */
+export const ONE: u64 = 0x3ff0000000000000;
+export const TO_MIDDLE: f64 = 1.0 - 1.0 / 9007199254740992.0;
+
+// Middles of cells, so that a draw is never exactly zero.
 // @ts-ignore: decorator
 @inline
-export function layerOf(table: usize, word: u64): usize {
-  return table + ((<usize>word & 255) << 5);
+function placeOf(word: u64): f64 {
+  return reinterpret<f64>((word >> 12) | ONE) - TO_MIDDLE;
 }
 
-// Odd numbers below 2^53: the middles of cells, so that a draw is never exactly zero.
 // @ts-ignore: decorator
 @inline
-export function cellOf(word: u64): u64 {
-  return (word >> 11) | 1;
+function layerOf(table: usize, word: u64): usize {
+  return table + ((<usize>word & 255) << 4);
+}
+
+// @ts-ignore: decorator
+@inline
+function heightOf(table: usize, word: u64): usize {
+  return table + ((<usize>word & 255) << 3);
 }
 
 // @ts-ignore: decorator
@@ -23,62 +40,92 @@ export function signed(x: f64, word: u64): f64 {
   return reinterpret<f64>(reinterpret<u64>(x) | ((word & 256) << 55));
 }
 
+// For loops that keep their place among the words themselves: a draw that its first word decides, or −1 where more
+// words are needed, to be had from nextNormal and nextExponential.
+// @ts-ignore: decorator
+@inline
+export function quickHalfNormal(word: u64): f64 {
+  const layer = layerOf(normalLayers, word);
+  const place = placeOf(word);
+  return place < load<f64>(layer, 8) ? place * load<f64>(layer) : -1.0;
+}
+
+// @ts-ignore: decorator
+@inline
+export function quickExponential(word: u64): f64 {
+  const layer = layerOf(exponentialLayers, word);
+  const place = placeOf(word);
+  return place < load<f64>(layer, 8) ? place * load<f64>(layer) : -1.0;
+}
+
 /** Finishes a half-normal draw whose first word fell outside the inner part of its layer. */
-export function normalRest(state: usize, first: u64): f64 {
+function normalRest(first: u64): f64 {
   let word = first;
   while (true) {
     const layer = layerOf(normalLayers, word);
-    const x = <f64>(<i64>cellOf(word)) * load<f64>(layer);
-    if (cellOf(word) < load<u64>(layer, 8)) return x;
+    const place = placeOf(word);
+    const x = place * load<f64>(layer);
+    if (place < load<f64>(layer, 8)) return x;
     if (layer == normalLayers) {
       // G. Marsaglia, Generating a variable from the tail of the normal distribution, Technometrics 6, 1964.
       while (true) {
-        const beyond = -Math.log(nextFine(state)) / NORMAL_TAIL;
-        const test = -Math.log(nextFine(state));
+        const beyond = -Math.log(nextFine()) / NORMAL_TAIL;
+        const test = -Math.log(nextFine());
         if (test + test >= beyond * beyond) return NORMAL_TAIL + beyond;
       }
     }
-    const low = load<f64>(layer, 16);
-    const high = load<f64>(layer, 24);
-    if (low + (high - low) * nextCell(state) < Math.exp(-0.5 * x * x)) return x;
-    word = nextWord(state);
+    const height = heightOf(normalHeights, word);
+    const low = load<f64>(height);
+    if (low + (load<f64>(height, 8) - low) * nextCell() < Math.exp(-0.5 * x * x)) return x;
+    word = nextWord();
   }
 }
 
 /** Finishes an exponential draw likewise. Beyond the tail's start the law is itself again, shifted. */
-export function exponentialRest(state: usize, first: u64): f64 {
+function exponentialRest(first: u64): f64 {
   let word = first;
   let shift = 0.0;
   while (true) {
     const layer = layerOf(exponentialLayers, word);
-    const x = <f64>(<i64>cellOf(word)) * load<f64>(layer);
-    if (cellOf(word) < load<u64>(layer, 8)) return shift + x;
+    const place = placeOf(word);
+    const x = place * load<f64>(layer);
+    if (place < load<f64>(layer, 8)) return shift + x;
     if (layer == exponentialLayers) {
       shift += EXPONENTIAL_TAIL;
     } else {
-      const low = load<f64>(layer, 16);
-      const high = load<f64>(layer, 24);
-      if (low + (high - low) * nextCell(state) < Math.exp(-x)) return shift + x;
+      const height = heightOf(exponentialHeights, word);
+      const low = load<f64>(height);
+      if (low + (load<f64>(height, 8) - low) * nextCell() < Math.exp(-x)) return shift + x;
     }
-    word = nextWord(state);
+    word = nextWord();
   }
 }
 
 // @ts-ignore: decorator
 @inline
-export function nextNormal(state: usize): f64 {
-  const word = nextWord(state);
+export function nextNormal(): f64 {
+  const word = nextWord();
   const layer = layerOf(normalLayers, word);
-  const cell = cellOf(word);
-  const x = cell < load<u64>(layer, 8) ? <f64>(<i64>cell) * load<f64>(layer) : normalRest(state, word);
+  const place = placeOf(word);
+  const x = place < load<f64>(layer, 8) ? place * load<f64>(layer) : normalRest(word);
   return signed(x, word);
 }
 
 // @ts-ignore: decorator
 @inline
-export function nextExponential(state: usize): f64 {
-  const word = nextWord(state);
+export function nextExponential(): f64 {
+  const word = nextWord();
   const layer = layerOf(exponentialLayers, word);
-  const cell = cellOf(word);
-  return cell < load<u64>(layer, 8) ? <f64>(<i64>cell) * load<f64>(layer) : exponentialRest(state, word);
+  const place = placeOf(word);
+  return place < load<f64>(layer, 8) ? place * load<f64>(layer) : exponentialRest(word);
+}
+
+/** An exponential with a random sign: standard Laplace. */
+// @ts-ignore: decorator
+@inline
+export function nextLaplace(): f64 {
+  const word = nextWord();
+  const layer = layerOf(exponentialLayers, word);
+  const place = placeOf(word);
+  return signed(place < load<f64>(layer, 8) ? place * load<f64>(layer) : exponentialRest(word), word);
 }

@@ -13,16 +13,18 @@ const CELLS: f64 = 9007199254740992.0;
 export const NORMAL_TAIL: f64 = 3.6541528853610088;
 export const EXPONENTIAL_TAIL: f64 = 7.69711747013104972;
 
-// Per layer 32 bytes: width per 2^-53 cell, the first cell outside the next layer, f(x[i]), f(x[i+1]).
-export const normalLayers: usize = memory.data(256 * 32, 16);
-export const exponentialLayers: usize = memory.data(256 * 32, 16);
+// Per layer 16 bytes, its width and the share of it that lies under the next layer as well; the heights f(x[i]) apart.
+export const normalLayers: usize = memory.data(256 * 16, 16);
+export const exponentialLayers: usize = memory.data(256 * 16, 16);
+export const normalHeights: usize = memory.data(257 * 8, 16);
+export const exponentialHeights: usize = memory.data(257 * 8, 16);
 
-function writeLayer(table: usize, i: i32, width: f64, next: f64, low: f64, high: f64): void {
-  const at = table + <usize>(32 * i);
-  store<f64>(at, width / CELLS);
-  store<u64>(at, <u64>((next / width) * CELLS), 8);
-  store<f64>(at, low, 16);
-  store<f64>(at, high, 24);
+function writeLayer(layers: usize, heights: usize, i: i32, width: f64, next: f64, low: f64, high: f64): void {
+  const at = layers + <usize>(16 * i);
+  store<f64>(at, width);
+  store<f64>(at, Math.floor((next / width) * CELLS) / CELLS, 8);
+  store<f64>(heights + <usize>(8 * i), low);
+  store<f64>(heights + <usize>(8 * i), high, 8);
 }
 
 function buildNormal(): void {
@@ -32,13 +34,13 @@ function buildNormal(): void {
   let fraction = r;
   for (let k = 200; k >= 1; k--) fraction = r + <f64>k / fraction;
   const area = r * low + low / fraction;
-  writeLayer(normalLayers, 0, area / low, r, 0.0, low);
+  writeLayer(normalLayers, normalHeights, 0, area / low, r, 0.0, low);
   let x = r;
   let f = low;
   for (let i = 1; i < LAYERS; i++) {
     const above = i == LAYERS - 1 ? 1.0 : f + area / x;
     const next = i == LAYERS - 1 ? 0.0 : Math.sqrt(-2.0 * Math.log(above));
-    writeLayer(normalLayers, i, x, next, f, above);
+    writeLayer(normalLayers, normalHeights, i, x, next, f, above);
     x = next;
     f = above;
   }
@@ -48,13 +50,13 @@ function buildExponential(): void {
   const r = EXPONENTIAL_TAIL;
   const low = Math.exp(-r);
   const area = (r + 1.0) * low;
-  writeLayer(exponentialLayers, 0, area / low, r, 0.0, low);
+  writeLayer(exponentialLayers, exponentialHeights, 0, area / low, r, 0.0, low);
   let x = r;
   let f = low;
   for (let i = 1; i < LAYERS; i++) {
     const above = i == LAYERS - 1 ? 1.0 : f + area / x;
     const next = i == LAYERS - 1 ? 0.0 : -Math.log(above);
-    writeLayer(exponentialLayers, i, x, next, f, above);
+    writeLayer(exponentialLayers, exponentialHeights, i, x, next, f, above);
     x = next;
     f = above;
   }

@@ -1,60 +1,66 @@
 // Compiled by AssemblyScript only. Beta draws by their odds z/(1 − z) = g1/g2, a ratio of gamma draws: the odds
 // keep what z loses next to 0 and to 1. The same words give the draw, its logarithm and its log odds.
-import { expOf, gammaExponent, gammaFactor } from './_randomGammas';
+import { drawGammaPairs, expOf, exponentOf, factorOf, GAMMAS } from './_randomGammas';
 import { storeNegative, storePositive, storeReal, storeUnit } from './_randomRound';
 
-/** The odds are the factor that `oddsFactor` returned last, times exp(oddsExponent). */
-let oddsExponent: f64 = 0.0;
-
-function oddsFactor(state: usize, a: f64, b: f64): f64 {
-  const first = gammaFactor(state, a);
-  oddsExponent = gammaExponent;
-  const second = gammaFactor(state, b);
-  oddsExponent -= gammaExponent;
-  return first / second;
-}
+const VALUE: i32 = 0;
+const LOG: i32 = 1;
+const LOG_ODDS: i32 = 2;
+const ODDS: i32 = 3;
 
 // @ts-ignore: decorator
 @inline
-function at(array: usize, i: i32): f64 {
-  return <f64>load<f32>(array + 4 * <usize>i);
-}
-
-export function fillBeta(state: usize, out: usize, n: i32, a: usize, b: usize): void {
-  for (let i = 0; i < n; i++) {
-    const odds = oddsFactor(state, at(a, i), at(b, i)) * expOf(oddsExponent);
-    storeUnit(out + 4 * <usize>i, odds == Infinity ? 1.0 : odds / (1.0 + odds));
+function fillOdds(out: usize, n: i32, a: usize, b: usize, scales: usize, scaled: bool, what: i32): void {
+  for (let start = 0; start < n; start += GAMMAS / 2) {
+    const count = min(GAMMAS / 2, n - start);
+    const offset = <usize>start << 2;
+    drawGammaPairs(count, a + offset, b + offset);
+    for (let i = 0; i < count; i++) {
+      const at = offset + (<usize>i << 2);
+      // The odds are the factor times exp(exponent).
+      const first = factorOf(2 * i);
+      const second = factorOf(2 * i + 1);
+      const exponent = exponentOf(2 * i) - exponentOf(2 * i + 1);
+      if (what == VALUE) {
+        // Whichever exponential does not overflow: the odds' or their reciprocal's.
+        const small = expOf(-Math.abs(exponent));
+        const above = exponent > 0.0 ? first : first * small;
+        storeUnit(out + at, above / (above + (exponent > 0.0 ? second * small : second)));
+        continue;
+      }
+      const factor = (scaled ? <f64>load<f32>(scales + at) : 1.0) * (first / second);
+      if (what == ODDS) storePositive(out + at, factor * expOf(exponent));
+      else if (what == LOG_ODDS) storeReal(out + at, Math.log(factor) + exponent);
+      else {
+        // log z = −log1p(1/odds) = log odds − log1p(odds).
+        const odds = factor * expOf(exponent);
+        const small = odds < 1.0;
+        storeNegative(
+          out + at,
+          small ? Math.log(factor) + exponent - Math.log1p(odds) : -Math.log1p(1.0 / odds),
+        );
+      }
+    }
   }
 }
 
-/** log z = −log1p(1/odds): where the odds are below 1, log odds − log1p(odds). */
-export function fillLogBeta(state: usize, out: usize, n: i32, a: usize, b: usize): void {
-  for (let i = 0; i < n; i++) {
-    const factor = oddsFactor(state, at(a, i), at(b, i));
-    const odds = factor * expOf(oddsExponent);
-    const value = odds < 1.0 ? Math.log(factor) + oddsExponent - Math.log1p(odds) : -Math.log1p(1.0 / odds);
-    storeNegative(out + 4 * <usize>i, value);
-  }
+export function fillBeta(out: usize, n: i32, a: usize, b: usize): void {
+  fillOdds(out, n, a, b, 0, false, VALUE);
 }
 
-export function fillLogOddsBeta(state: usize, out: usize, n: i32, a: usize, b: usize): void {
-  for (let i = 0; i < n; i++) {
-    const factor = oddsFactor(state, at(a, i), at(b, i));
-    storeReal(out + 4 * <usize>i, Math.log(factor) + oddsExponent);
-  }
+export function fillLogBeta(out: usize, n: i32, a: usize, b: usize): void {
+  fillOdds(out, n, a, b, 0, false, LOG);
+}
+
+export function fillLogOddsBeta(out: usize, n: i32, a: usize, b: usize): void {
+  fillOdds(out, n, a, b, 0, false, LOG_ODDS);
 }
 
 /** A beta draw's odds, scaled: with a and b half the degrees of freedom and scale b/a, an F draw. */
-export function fillBetaPrime(state: usize, out: usize, n: i32, a: usize, b: usize, scales: usize): void {
-  for (let i = 0; i < n; i++) {
-    const factor = at(scales, i) * oddsFactor(state, at(a, i), at(b, i));
-    storePositive(out + 4 * <usize>i, factor * expOf(oddsExponent));
-  }
+export function fillBetaPrime(out: usize, n: i32, a: usize, b: usize, scales: usize): void {
+  fillOdds(out, n, a, b, scales, true, ODDS);
 }
 
-export function fillLogBetaPrime(state: usize, out: usize, n: i32, a: usize, b: usize, scales: usize): void {
-  for (let i = 0; i < n; i++) {
-    const factor = at(scales, i) * oddsFactor(state, at(a, i), at(b, i));
-    storeReal(out + 4 * <usize>i, Math.log(factor) + oddsExponent);
-  }
+export function fillLogBetaPrime(out: usize, n: i32, a: usize, b: usize, scales: usize): void {
+  fillOdds(out, n, a, b, scales, true, LOG_ODDS);
 }

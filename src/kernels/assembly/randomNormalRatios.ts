@@ -1,5 +1,5 @@
 // Compiled by AssemblyScript only. Draws made of normals: Cauchy, Student's t, inverse Gaussian, von Mises.
-import { expOf, gammaExponent, gammaFactor } from './_randomGammas';
+import { drawGamma, expOf, exponentOf, factorOf } from './_randomGammas';
 import { storeAngle, storePositive, storeReal } from './_randomRound';
 import { nextNormal } from './_randomScalars';
 import { nextCell, nextFine } from './_randomWords';
@@ -7,9 +7,9 @@ import { nextCell, nextFine } from './_randomWords';
 /** A ratio of two normals: both are continuous, so neither the tails nor the middle have a grain. */
 // @ts-ignore: decorator
 @inline
-function nextCauchy(state: usize): f64 {
-  const above = nextNormal(state);
-  return above / nextNormal(state);
+function nextCauchy(): f64 {
+  const above = nextNormal();
+  return above / nextNormal();
 }
 
 // @ts-ignore: decorator
@@ -18,17 +18,17 @@ function at(array: usize, i: i32): f64 {
   return <f64>load<f32>(array + 4 * <usize>i);
 }
 
-export function fillCauchy(state: usize, out: usize, n: i32): void {
-  for (let i = 0; i < n; i++) store<f32>(out + 4 * <usize>i, <f32>nextCauchy(state));
+export function fillCauchy(out: usize, n: i32): void {
+  for (let i = 0; i < n; i++) store<f32>(out + 4 * <usize>i, <f32>nextCauchy());
 }
 
 /** A normal over the root of an independent gamma of shape ν/2 and mean 1 (Student's definition). */
-export function fillStudentT(state: usize, out: usize, n: i32, degreesOfFreedom: usize): void {
+export function fillStudentT(out: usize, n: i32, degreesOfFreedom: usize): void {
   for (let i = 0; i < n; i++) {
     const half = 0.5 * at(degreesOfFreedom, i);
-    const normal = nextNormal(state);
-    const factor = gammaFactor(state, half);
-    storeReal(out + 4 * <usize>i, normal * Math.sqrt(half / factor) * expOf(-0.5 * gammaExponent));
+    const normal = nextNormal();
+    drawGamma(half);
+    storeReal(out + 4 * <usize>i, normal * Math.sqrt(half / factorOf(0)) * expOf(-0.5 * exponentOf(0)));
   }
 }
 
@@ -38,13 +38,13 @@ export function fillStudentT(state: usize, out: usize, n: i32, degreesOfFreedom:
  * 1 + w ± √(w(w + 2)), each the other's reciprocal; the larger one is a plain sum, so neither cancels. The larger
  * is taken with probability s/(1 + s), s the smaller.
  */
-export function fillInverseGaussian(state: usize, out: usize, n: i32, means: usize, shapes: usize): void {
+export function fillInverseGaussian(out: usize, n: i32, means: usize, shapes: usize): void {
   for (let i = 0; i < n; i++) {
     const mean = at(means, i);
-    const normal = nextNormal(state);
+    const normal = nextNormal();
     const w = (0.5 * normal * normal * mean) / at(shapes, i);
     const large = 1.0 + w + Math.sqrt(w * (w + 2.0));
-    storePositive(out + 4 * <usize>i, nextFine(state) * (large + 1.0) < 1.0 ? mean * large : mean / large);
+    storePositive(out + 4 * <usize>i, nextFine() * (large + 1.0) < 1.0 ? mean * large : mean / large);
   }
 }
 
@@ -54,15 +54,15 @@ export function fillInverseGaussian(state: usize, out: usize, n: i32, means: usi
  * √(s/(s + 2)), where their r = 1 + s. With m = κ s = (1 + 1/(√(1 + 4κ²) + 2κ))/2 their c = κ(r − cos θ) is
  * m + 2κ t²/(1 + t²): nothing cancels, however small or large κ is.
  */
-export function fillVonMises(state: usize, out: usize, n: i32, concentrations: usize): void {
+export function fillVonMises(out: usize, n: i32, concentrations: usize): void {
   for (let i = 0; i < n; i++) {
     const kappa = at(concentrations, i);
     const m = 0.5 + 0.5 / (Math.sqrt(1.0 + 4.0 * kappa * kappa) + 2.0 * kappa);
     const narrow = Math.sqrt(m / (m + 2.0 * kappa));
     while (true) {
-      const t = narrow * nextCauchy(state);
+      const t = narrow * nextCauchy();
       const c = m + (2.0 * kappa * t * t) / (1.0 + t * t);
-      const u = nextCell(state);
+      const u = nextCell();
       if (u < c * (2.0 - c) || Math.log(c / u) + 1.0 >= c) {
         storeAngle(out + 4 * <usize>i, 2.0 * Math.atan(t));
         break;
