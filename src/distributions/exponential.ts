@@ -1,9 +1,10 @@
 import * as tf from '@tensorflow/tfjs';
 import { positive } from '../support/support.js';
-import { choose, composedLog1p, stepwise } from '../tensor/composedMath.js';
+import { choose, composedExp, composedLog1p, stepwise, when } from '../tensor/composedMath.js';
+import { composedExpm1, composedLog1mexp } from '../tensor/composedRemainders.js';
 import { kernel } from '../tensor/formula.js';
 import { exponentiated, reciprocal } from '../tensor/transforms.js';
-import type { Distribution, HasContinuousForms } from './distribution.js';
+import type { Distribution, HasMoments, HasQuantiles, HasTails } from './distribution.js';
 import type { OneOf } from './oneOf.js';
 import { aboveZero, logarithmic, runaway } from './parameters.js';
 import { scalarFamily } from './scalarFamily.js';
@@ -12,7 +13,11 @@ import { scalarFamily } from './scalarFamily.js';
 export type ExponentialOptions = OneOf<'rate' | 'logRate' | 'scale' | 'mean'>;
 
 /** An array of exponential distributions. */
-export interface Exponential extends Distribution<'exponential', 'pathwise'>, HasContinuousForms {
+export interface Exponential
+  extends Distribution<'exponential', 'pathwise'>,
+    HasMoments,
+    HasTails,
+    HasQuantiles {
   /** A parameter as the formulas read it, differentiable. */
   parameter(name: 'rate'): tf.Tensor;
 }
@@ -43,9 +48,21 @@ const make = scalarFamily({
   },
   functions: {
     cdf: kernel('exponentialCdf', (x, r) =>
-      choose(tf.greaterEqual(x!, 0), tf.neg(tf.expm1(tf.neg(tf.mul(r!, x!)))), 0),
+      choose(tf.greaterEqual(x!, 0), tf.neg(composedExpm1(tf.neg(tf.mul(r!, x!)))), 0),
+    ),
+    survival: kernel('exponentialSurvival', (x, r) =>
+      choose(tf.greaterEqual(x!, 0), composedExp(tf.neg(tf.mul(r!, x!))), 1),
+    ),
+    logCdf: kernel('exponentialLogCdf', (x, r) => {
+      const inside = tf.greater(x!, 0);
+      const held = tf.mul(r!, when(inside, x!, tf.onesLike(x!)));
+      return choose(inside, composedLog1mexp(tf.neg(held)), Number.NEGATIVE_INFINITY);
+    }),
+    logSurvival: kernel('exponentialLogSurvival', (x, r) =>
+      choose(tf.greaterEqual(x!, 0), tf.neg(tf.mul(r!, x!)), 0),
     ),
     quantile: kernel('exponentialQuantile', (p, r) => tf.neg(tf.div(composedLog1p(tf.neg(p!)), r!))),
+    upperQuantile: kernel('exponentialUpperQuantile', (p, r) => tf.neg(tf.div(tf.log(p!), r!))),
   },
 });
 

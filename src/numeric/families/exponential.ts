@@ -1,6 +1,7 @@
 // The exponential distribution in double precision.
 // Source: Johnson, Kotz and Balakrishnan, Continuous Univariate Distributions 1 (1994), chapter 19.
 import { logRatio } from '../deviance.js';
+import { log1mexp } from '../log1mexp.js';
 import { log1pmx } from '../log1pmx.js';
 import { outside } from '../outside.js';
 
@@ -58,6 +59,40 @@ export function exponentialCdf_rate(x: number, rate: number): number {
   return x >= 0.0 ? x * Math.exp(-rate * x) : 0.0;
 }
 
+/** Survival function, exp(−rate · x). @kernel */
+export function exponentialSurvival(x: number, rate: number): number {
+  return x <= 0.0 ? 1.0 : Math.exp(-rate * x);
+}
+export function exponentialSurvival_x(x: number, rate: number): number {
+  return -exponentialCdf_x(x, rate);
+}
+export function exponentialSurvival_rate(x: number, rate: number): number {
+  return -exponentialCdf_rate(x, rate);
+}
+
+/** Log distribution function, log(1 − exp(−rate · x)). @kernel */
+export function exponentialLogCdf(x: number, rate: number): number {
+  return x <= 0.0 ? -Infinity : log1mexp(-rate * x);
+}
+export function exponentialLogCdf_x(x: number, rate: number): number {
+  return x > 0.0 ? rate / Math.expm1(rate * x) : 0.0;
+}
+export function exponentialLogCdf_rate(x: number, rate: number): number {
+  if (!(x > 0.0) || x === Infinity) return 0.0;
+  return x / Math.expm1(rate * x);
+}
+
+/** Log survival function, −rate · x. @kernel */
+export function exponentialLogSurvival(x: number, rate: number): number {
+  return x <= 0.0 ? 0.0 : -rate * x;
+}
+export function exponentialLogSurvival_x(x: number, rate: number): number {
+  return x >= 0.0 ? -rate : 0.0;
+}
+export function exponentialLogSurvival_rate(x: number, _rate: number): number {
+  return x >= 0.0 ? -x : 0.0;
+}
+
 /** Quantile, −log(1 − p) / rate. @kernel */
 export function exponentialQuantile(p: number, rate: number): number {
   return -Math.log1p(-p) / rate;
@@ -67,6 +102,17 @@ export function exponentialQuantile_p(p: number, rate: number): number {
 }
 export function exponentialQuantile_rate(p: number, rate: number): number {
   return Math.log1p(-p) / rate / rate;
+}
+
+/** Upper quantile, −log p / rate. @kernel */
+export function exponentialUpperQuantile(p: number, rate: number): number {
+  return -Math.log(p) / rate;
+}
+export function exponentialUpperQuantile_p(p: number, rate: number): number {
+  return -1.0 / (p * rate);
+}
+export function exponentialUpperQuantile_rate(p: number, rate: number): number {
+  return Math.log(p) / rate / rate;
 }
 
 /** Divergence, r − 1 − log r with r = otherRate / rate. @kernel */

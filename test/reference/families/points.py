@@ -254,8 +254,9 @@ POINTS = {
                + [(f32(2 + x), f32(3 - y), 2.0, 3.0) for x in (0.0, 2.4e-7, 1e-3, 0.4) for y in (0.0, 2.4e-7, 1e-3, 0.4)]),
     },
     'exponential': {
-        'logDensity': (rate_point, RATES), 'cdf': (rate_point, RATES),
-        'quantile': (lambda d: (share(d), spread(d)), with_shares([(s,) for s in SPREADS])),
+        **{name: (rate_point, RATES) for name in ('logDensity', 'cdf', 'survival', 'logCdf', 'logSurvival')},
+        **{name: (lambda d: (share(d), spread(d)), with_shares([(s,) for s in SPREADS]))
+           for name in ('quantile', 'upperQuantile')},
         **{name: (scale_draw, ONE_SPREAD) for name in ('mean', 'variance', 'mode', 'entropy')},
         'kl': (scale_pair, [(s, t) for _, s, _, t in PAIRS]),
     },

@@ -135,6 +135,12 @@ def exponential_cdf(x, rate):
     return [-expm1(-rate * x)] if x.value >= 0 else [constant(0, x)]
 
 
+def exponential_log_cdf(x, rate):
+    if x.value <= 0:
+        return [constant(MINUS_INFINITY, x)]
+    return [log(-expm1(-rate * x)) if (rate * x).value < 100 else log1p(-exp(-rate * x))]
+
+
 def exponential_kl(r, s):
     return [s / r, -constant(1, r), -log(s / r)]
 
@@ -246,7 +252,11 @@ FUNCTIONS = {
     'exponential': {
         'logDensity': ('exponentialLogDensity', lambda x, r: [log(r), -r * x], 'x rate', 'x rate'),
         'cdf': ('exponentialCdf', exponential_cdf, 'x rate', 'x rate'),
+        'survival': ('exponentialSurvival', lambda x, r: [exp(-r * x)], 'x rate', 'x rate'),
+        'logCdf': ('exponentialLogCdf', exponential_log_cdf, 'x rate', 'x rate'),
+        'logSurvival': ('exponentialLogSurvival', lambda x, r: [-r * x], 'x rate', 'x rate'),
         'quantile': ('exponentialQuantile', lambda p, r: [-log1p(-p) / r], 'p rate', 'p rate'),
+        'upperQuantile': ('exponentialUpperQuantile', lambda p, r: [-log(p) / r], 'p rate', 'p rate'),
         'mean': ('reciprocal', lambda r: [1 / r], 'rate', 'rate'),
         'variance': ('exponentialVariance', lambda r: [1 / square(r)], 'rate', 'rate'),
         'mode': ('exponentialMode', lambda r: [0 * r], 'rate', 'rate'),
