@@ -7,7 +7,7 @@ import { exponentiated, reciprocal } from '../tensor/transforms.js';
 import type { Distribution, HasMoments, HasQuantiles, HasTails } from './distribution.js';
 import type { OneOf } from './oneOf.js';
 import { aboveZero, logarithmic, runaway } from './parameters.js';
-import { scalarFamily } from './scalarFamily.js';
+import { quantileRoute } from './routes.js';
 
 /** Parameters of {@link exponential}: exactly one. */
 export type ExponentialOptions = OneOf<'rate' | 'logRate' | 'scale' | 'mean'>;
@@ -24,9 +24,8 @@ export interface Exponential
 
 const fix = 'pass logRate if your network can produce negative values';
 
-const make = scalarFamily({
+const make = quantileRoute({
   family: 'exponential',
-  route: 'pathwise',
   support: positive,
   parameters: {
     rate: {
@@ -39,14 +38,12 @@ const make = scalarFamily({
   logDensity: kernel('exponentialLogDensity', (x, r) =>
     choose(tf.greaterEqual(x!, 0), tf.sub(tf.log(r!), tf.mul(r!, x!)), Number.NEGATIVE_INFINITY),
   ),
-  draw: { noise: 'exponential', formula: kernel('exponentialDraw', (e, r) => tf.div(e!, r!)) },
-  summaries: {
+  draw: { noise: 'exponential', composed: kernel('exponentialDraw', (e, r) => tf.div(e!, r!)) },
+  forms: {
     mean: { ...kernel('reciprocal', (r) => tf.div(1, r!)), parameters: ['rate'] },
     variance: kernel('exponentialVariance', (r) => tf.div(1, tf.square(r!))),
     mode: kernel('exponentialMode', (r) => stepwise(r!, tf.zerosLike)),
     entropy: kernel('exponentialEntropy', (r) => tf.sub(1, tf.log(r!))),
-  },
-  functions: {
     cdf: kernel('exponentialCdf', (x, r) =>
       choose(tf.greaterEqual(x!, 0), tf.neg(composedExpm1(tf.neg(tf.mul(r!, x!)))), 0),
     ),

@@ -1,52 +1,55 @@
 import * as tf from '@tensorflow/tfjs';
 import { real } from '../support/support.js';
-import { composedAbs, composedExp, when } from '../tensor/composedMath.js';
+import { composedAbs, composedExp, composedLog1p, when } from '../tensor/composedMath.js';
 import { kernel } from '../tensor/formula.js';
-import type { Distribution, HasContinuousForms } from './distribution.js';
-import {
-  affineDraw,
-  type LocationScaleOptions,
-  locationItself,
-  locationScaleParameters,
-} from './locationScale.js';
-import { scalarFamily } from './scalarFamily.js';
+import type { Distribution, HasMoments, HasQuantiles, HasTails } from './distribution.js';
+import { type LocationScaleOptions, locationItself, locationScaleParameters } from './locationScale.js';
+import { locationScaleRoute } from './routes.js';
 
 /** Parameters of {@link laplace}. */
 export type LaplaceOptions = LocationScaleOptions;
 
 /** An array of Laplace distributions. */
-export interface Laplace extends Distribution<'laplace', 'pathwise'>, HasContinuousForms {
+export interface Laplace extends Distribution<'laplace', 'pathwise'>, HasMoments, HasTails, HasQuantiles {
   /** A parameter as the formulas read it, differentiable. */
   parameter(name: 'location' | 'scale'): tf.Tensor;
 }
 
-const make = scalarFamily({
+const standardCdf = (z: tf.Tensor): tf.Tensor => {
+  const below = tf.less(z, 0);
+  const tail = tf.mul(0.5, composedExp(when(below, z, tf.neg(z))));
+  return when(below, tail, tf.sub(1, tail));
+};
+
+const standardLogCdf = (z: tf.Tensor): tf.Tensor => {
+  const below = tf.less(z, 0);
+  const tail = composedExp(when(below, tf.zerosLike(z), tf.neg(z)));
+  return when(below, tf.sub(z, Math.LN2), composedLog1p(tf.mul(-0.5, tail)));
+};
+
+const standardQuantile = (p: tf.Tensor): tf.Tensor => {
+  const below = tf.less(p, 0.5);
+  const log = tf.log(tf.mul(2, when(below, p, tf.sub(1, p))));
+  return when(below, log, tf.neg(log));
+};
+
+const make = locationScaleRoute({
   family: 'laplace',
-  route: 'pathwise',
   support: real,
   parameters: locationScaleParameters,
-  logDensity: kernel('laplaceLogDensity', (x, l, s) =>
-    tf.neg(tf.add(tf.div(composedAbs(tf.sub(x!, l!)), s!), tf.log(tf.mul(2, s!)))),
-  ),
-  draw: affineDraw('laplace'),
-  summaries: {
+  logDensity: (z) => tf.sub(tf.neg(composedAbs(z!)), Math.LN2),
+  draw: { noise: 'laplace' },
+  forms: {
     mean: locationItself,
     mode: locationItself,
     variance: kernel('laplaceVariance', (s) => tf.mul(2, tf.square(s!))),
     entropy: kernel('laplaceEntropy', (s) => tf.add(1, tf.log(tf.mul(2, s!)))),
-  },
-  functions: {
-    cdf: kernel('laplaceCdf', (x, l, s) => {
-      const z = tf.div(tf.sub(x!, l!), s!);
-      const below = tf.less(z, 0);
-      const tail = tf.mul(0.5, composedExp(when(below, z, tf.neg(z))));
-      return when(below, tail, tf.sub(1, tail));
-    }),
-    quantile: kernel('laplaceQuantile', (p, l, s) => {
-      const below = tf.less(p!, 0.5);
-      const log = tf.log(tf.mul(2, when(below, p!, tf.sub(1, p!))));
-      return tf.add(l!, tf.mul(s!, when(below, log, tf.neg(log))));
-    }),
+    cdf: (z) => standardCdf(z!),
+    survival: (z) => standardCdf(tf.neg(z!)),
+    logCdf: (z) => standardLogCdf(z!),
+    logSurvival: (z) => standardLogCdf(tf.neg(z!)),
+    quantile: (p) => standardQuantile(p!),
+    upperQuantile: (p) => tf.neg(standardQuantile(p!)),
   },
 });
 

@@ -1,5 +1,4 @@
 import * as tf from '@tensorflow/tfjs';
-import type { NoiseKind } from '../random/noise.js';
 import type { ParameterValue } from '../tensor/checks.js';
 import { type Formula, kernel } from '../tensor/formula.js';
 import { exponentiated } from '../tensor/transforms.js';
@@ -31,8 +30,3 @@ export const affineFormula: Formula = {
   ...kernel('normalDraw', (e, l, s) => tf.add(l!, tf.mul(s!, e!))),
   parameters: ['noise', 'location', 'scale'],
 };
-
-/** Draws by {@link affineFormula}. */
-export function affineDraw(noise: NoiseKind): { noise: NoiseKind; formula: Formula } {
-  return { noise, formula: affineFormula };
-}

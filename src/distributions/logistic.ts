@@ -2,43 +2,36 @@ import * as tf from '@tensorflow/tfjs';
 import { real } from '../support/support.js';
 import { composedLogOdds, composedSigmoid, composedSoftplus } from '../tensor/composedMath.js';
 import { kernel } from '../tensor/formula.js';
-import type { Distribution, HasContinuousForms } from './distribution.js';
-import {
-  affineDraw,
-  type LocationScaleOptions,
-  locationItself,
-  locationScaleParameters,
-} from './locationScale.js';
-import { scalarFamily } from './scalarFamily.js';
+import type { Distribution, HasMoments, HasQuantiles, HasTails } from './distribution.js';
+import { type LocationScaleOptions, locationItself, locationScaleParameters } from './locationScale.js';
+import { locationScaleRoute } from './routes.js';
 
 /** Parameters of {@link logistic}. */
 export type LogisticOptions = LocationScaleOptions;
 
 /** An array of logistic distributions. */
-export interface Logistic extends Distribution<'logistic', 'pathwise'>, HasContinuousForms {
+export interface Logistic extends Distribution<'logistic', 'pathwise'>, HasMoments, HasTails, HasQuantiles {
   /** A parameter as the formulas read it, differentiable. */
   parameter(name: 'location' | 'scale'): tf.Tensor;
 }
 
-const make = scalarFamily({
+const make = locationScaleRoute({
   family: 'logistic',
-  route: 'pathwise',
   support: real,
   parameters: locationScaleParameters,
-  logDensity: kernel('logisticLogDensity', (x, l, s) => {
-    const z = tf.div(tf.sub(x!, l!), s!);
-    return tf.neg(tf.add(tf.add(composedSoftplus(z), composedSoftplus(tf.neg(z))), tf.log(s!)));
-  }),
-  draw: affineDraw('logistic'),
-  summaries: {
+  logDensity: (z) => tf.neg(tf.add(composedSoftplus(z!), composedSoftplus(tf.neg(z!)))),
+  draw: { noise: 'logistic' },
+  forms: {
     mean: locationItself,
     mode: locationItself,
     variance: kernel('logisticVariance', (s) => tf.mul(Math.PI ** 2 / 3, tf.square(s!))),
     entropy: kernel('logisticEntropy', (s) => tf.add(tf.log(s!), 2)),
-  },
-  functions: {
-    cdf: kernel('logisticCdf', (x, l, s) => composedSigmoid(tf.div(tf.sub(x!, l!), s!))),
-    quantile: kernel('logisticQuantile', (p, l, s) => tf.add(l!, tf.mul(s!, composedLogOdds(p!)))),
+    cdf: (z) => composedSigmoid(z!),
+    survival: (z) => composedSigmoid(tf.neg(z!)),
+    logCdf: (z) => tf.neg(composedSoftplus(tf.neg(z!))),
+    logSurvival: (z) => tf.neg(composedSoftplus(z!)),
+    quantile: (p) => composedLogOdds(p!),
+    upperQuantile: (p) => tf.neg(composedLogOdds(p!)),
   },
 });
 

@@ -1,13 +1,13 @@
 import * as tf from '@tensorflow/tfjs';
 import { real } from '../support/support.js';
 import type { ParameterValue } from '../tensor/checks.js';
-import { composedNormalCdf, composedNormalQuantile } from '../tensor/composedNormal.js';
 import { kernel } from '../tensor/formula.js';
 import { expHalf, exponentiated, inverseSquareRoot, squareRoot } from '../tensor/transforms.js';
-import type { Distribution, HasContinuousForms } from './distribution.js';
+import type { Distribution, HasMoments, HasQuantiles, HasTails } from './distribution.js';
+import { halfLogTwoPi, normalForms } from './normalForms.js';
 import type { OneOf } from './oneOf.js';
 import { aboveZero, finite, logarithmic, logarithmicSquare, runaway } from './parameters.js';
-import { scalarFamily } from './scalarFamily.js';
+import { locationScaleRoute } from './routes.js';
 
 /** Parameters of {@link normal}: a mean and exactly one measure of spread. */
 export type NormalOptions = { readonly mean: ParameterValue } & OneOf<
@@ -15,18 +15,16 @@ export type NormalOptions = { readonly mean: ParameterValue } & OneOf<
 >;
 
 /** An array of normal distributions. */
-export interface Normal extends Distribution<'normal', 'pathwise'>, HasContinuousForms {
+export interface Normal extends Distribution<'normal', 'pathwise'>, HasMoments, HasTails, HasQuantiles {
   /** A parameter as the formulas read it, differentiable. */
   parameter(name: 'mean' | 'sd'): tf.Tensor;
 }
 
-const halfLogTwoPi = 0.5 * Math.log(2 * Math.PI);
 const fix = 'pass logVariance if your network can produce negative values';
 const mean = kernel('identity', (v) => v.clone());
 
-const make = scalarFamily({
+const make = locationScaleRoute({
   family: 'normal',
-  route: 'pathwise',
   support: real,
   parameters: {
     mean: { mean: { domain: finite } },
@@ -38,20 +36,19 @@ const make = scalarFamily({
       precision: { domain: aboveZero, transform: inverseSquareRoot, fix },
     },
   },
-  logDensity: kernel('normalLogDensity', (x, m, s) => {
-    const z = tf.div(tf.sub(x!, m!), s!);
-    return tf.sub(tf.mul(-0.5, tf.square(z)), tf.add(tf.log(s!), halfLogTwoPi));
-  }),
-  draw: { noise: 'normal', formula: kernel('normalDraw', (e, m, s) => tf.add(m!, tf.mul(s!, e!))) },
-  summaries: {
+  logDensity: kernel('normalLogDensity', normalForms.logDensity),
+  draw: { noise: 'normal', composed: kernel('normalDraw', normalForms.draw) },
+  forms: {
     mean: { ...mean, parameters: ['mean'] },
     mode: { ...mean, parameters: ['mean'] },
     variance: kernel('normalVariance', (s) => tf.square(s!)),
     entropy: kernel('normalEntropy', (s) => tf.add(tf.log(s!), halfLogTwoPi + 0.5)),
-  },
-  functions: {
-    cdf: kernel('normalCdfOf', (x, m, s) => composedNormalCdf(tf.div(tf.sub(x!, m!), s!))),
-    quantile: kernel('normalQuantileOf', (p, m, s) => tf.add(m!, tf.mul(s!, composedNormalQuantile(p!)))),
+    cdf: kernel('normalCdfOf', normalForms.cdf),
+    survival: kernel('normalSurvivalOf', normalForms.survival),
+    logCdf: kernel('normalLogCdfOf', normalForms.logCdf),
+    logSurvival: kernel('normalLogSurvivalOf', normalForms.logSurvival),
+    quantile: kernel('normalQuantileOf', normalForms.quantile),
+    upperQuantile: kernel('normalUpperQuantileOf', normalForms.upperQuantile),
   },
 });
 

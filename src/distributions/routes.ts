@@ -1,8 +1,9 @@
-import type * as tf from '@tensorflow/tfjs';
+import * as tf from '@tensorflow/tfjs';
 import type { NoiseKind } from '../random/noise.js';
 import type { Stream } from '../random/stream.js';
 import type { Support } from '../support/support.js';
-import type { Formula } from '../tensor/formula.js';
+import { choose, when } from '../tensor/composedMath.js';
+import { type Formula, isKernel } from '../tensor/formula.js';
 import { noComposedForm } from '../tensor/noComposedForm.js';
 import type { Operand } from '../tensor/operand.js';
 import type { Joint } from './joint.js';
@@ -47,7 +48,7 @@ interface OwnFamily<Family extends string> {
   readonly fixed?: Readonly<Record<string, number>>;
   /** Parametrizations that give several parameters together. */
   readonly joints?: readonly Joint[];
-  readonly logDensity: Composed;
+  readonly logDensity: Form;
   readonly forms: OwnForms;
   check?(parameters: Record<string, Operand>): void;
 }
@@ -55,12 +56,12 @@ interface OwnFamily<Family extends string> {
 /** A family with a scale, and a location where it has a parameter of that name; composed forms are in z. */
 export interface OwnLocationScale<Family extends string> extends OwnFamily<Family> {
   /** Standard noise: the standard draw itself, or what the kernel `<family>Draw` makes of it. */
-  readonly draw: { readonly noise: NoiseKind | readonly NoiseKind[]; readonly composed?: Composed };
+  readonly draw: { readonly noise: NoiseKind | readonly NoiseKind[]; readonly composed?: Form };
 }
 
 /** A family whose draws are a function of standard noise and the parameters. */
 export interface OwnQuantile<Family extends string> extends OwnFamily<Family> {
-  readonly draw: { readonly noise: NoiseKind | readonly NoiseKind[]; readonly composed: Composed };
+  readonly draw: { readonly noise: NoiseKind | readonly NoiseKind[]; readonly composed: Form };
 }
 
 /** A family with an exact sampler; the kernel `<family>Draw` has the draw's implicit derivatives. */
@@ -72,6 +73,36 @@ export interface OwnImplicit<Family extends string> extends OwnFamily<Family> {
   readonly placed?: boolean;
 }
 
+/** A map from the real numbers, rising, in composed forms: see {@link pushforwardRoute}. */
+export interface OwnMap {
+  apply(z: tf.Tensor): tf.Tensor;
+  /** The inverse, of points inside the image. */
+  invert(x: tf.Tensor): tf.Tensor;
+  /** log |dx/dz| at z. */
+  logVolume(z: tf.Tensor): tf.Tensor;
+  /** Whether a point lies in the image, and whether it lies above it. */
+  inside(x: tf.Tensor): tf.Tensor;
+  above(x: tf.Tensor): tf.Tensor;
+  /** A point inside. */
+  readonly somewhere: number;
+}
+
+/** A family of what a map makes of another: `base` has the composed forms of the one before the map. */
+export interface OwnPushforward<Family extends string> extends Omit<OwnFamily<Family>, 'logDensity'> {
+  readonly map: OwnMap;
+  readonly base: {
+    readonly logDensity: Composed;
+    readonly draw: Composed;
+    readonly cdf: Composed;
+    readonly survival: Composed;
+    readonly logCdf: Composed;
+    readonly logSurvival: Composed;
+    readonly quantile: Composed;
+    readonly upperQuantile: Composed;
+  };
+  readonly noise: NoiseKind;
+}
+
 type Factory<Family extends string> = (options: object) => ScalarDistribution<Family, 'pathwise'>;
 
 const capital = (name: string): string => name[0]!.toUpperCase() + name.slice(1);
@@ -81,10 +112,13 @@ function formulas<Family extends string>(
   own: OwnFamily<Family>,
   located: boolean | undefined,
 ): Pick<ScalarDefinition<Family, 'pathwise'>, 'logDensity' | 'summaries' | 'functions'> & {
-  named(name: string, composed: Composed): Formula;
+  named(name: string, form: Form): Formula;
 } {
-  const named = (name: string, composed: Composed): Formula => {
-    const full = `${own.kernels ?? own.family}${capital(name)}`;
+  const named = (name: string, composed: Form): Formula => {
+    if (typeof composed !== 'function') return composed;
+    const front = `${own.kernels ?? own.family}${capital(name)}`;
+    // A special function may have the name already.
+    const full = isKernel(`${front}Of`) ? `${front}Of` : front;
     return located === undefined
       ? kernelNamed(full, composed as (...values: tf.Tensor[]) => tf.Tensor)
       : placedKernel(full, placedKinds[name]!, located, composed);
@@ -93,7 +127,7 @@ function formulas<Family extends string>(
     Object.fromEntries(
       names.flatMap((name) => {
         const form = own.forms[name];
-        return form === undefined ? [] : [[name, typeof form === 'function' ? named(name, form) : form]];
+        return form === undefined ? [] : [[name, named(name, form)]];
       }),
     );
   return {
@@ -134,6 +168,45 @@ export function quantileRoute<Family extends string>(own: OwnQuantile<Family>): 
   const { named, ...found } = formulas(own, undefined);
   const { noise, composed } = own.draw;
   return scalarFamily({ ...common(own), ...found, draw: { noise, formula: named('draw', composed) } });
+}
+
+/** A family by a map of another family's points: density, tails, quantiles and draws follow. */
+export function pushforwardRoute<Family extends string>(own: OwnPushforward<Family>): Factory<Family> {
+  const { map, base, noise, forms, ...rest } = own;
+  const tail =
+    (form: Composed, below: number, above: number): Composed =>
+    (x, ...parameters) => {
+      const inside = map.inside(x!);
+      const z = map.invert(when(inside, x!, tf.fill(x!.shape, map.somewhere)));
+      const ends = when(map.above(x!), tf.fill(x!.shape, above), tf.fill(x!.shape, below));
+      return tf.add(
+        choose(inside, form(z, ...parameters) as tf.Tensor, 0),
+        choose(tf.logicalNot(inside), ends, 0),
+      );
+    };
+  const mapped =
+    (form: Composed): Composed =>
+    (p, ...parameters) =>
+      map.apply(form(p!, ...parameters) as tf.Tensor);
+  return quantileRoute({
+    ...rest,
+    logDensity: (x, ...parameters) => {
+      const inside = map.inside(x!);
+      const z = map.invert(when(inside, x!, tf.fill(x!.shape, map.somewhere)));
+      const value = tf.sub(base.logDensity(z, ...parameters), map.logVolume(z));
+      return choose(inside, value, Number.NEGATIVE_INFINITY);
+    },
+    draw: { noise, composed: mapped(base.draw) },
+    forms: {
+      cdf: tail(base.cdf, 0, 1),
+      survival: tail(base.survival, 1, 0),
+      logCdf: tail(base.logCdf, Number.NEGATIVE_INFINITY, 0),
+      logSurvival: tail(base.logSurvival, 0, Number.NEGATIVE_INFINITY),
+      quantile: mapped(base.quantile),
+      upperQuantile: mapped(base.upperQuantile),
+      ...forms,
+    },
+  });
 }
 
 /** A family by an exact sampler; the draw's gradient comes by implicit differentiation. */

@@ -4,13 +4,19 @@ import { broadcastShapes, broadcastStrides, forEachBroadcast } from '../kernels/
 import { interval } from '../support/support.js';
 import { valuesAreChecked } from '../tensor/backend.js';
 import { type ParameterValue, positionText } from '../tensor/checks.js';
-import { choose, stepwise } from '../tensor/composedMath.js';
-import { detach } from '../tensor/detach.js';
+import { choose, composedLog1p, stepwise, when } from '../tensor/composedMath.js';
 import { kernel } from '../tensor/formula.js';
 import { type Operand, operandData } from '../tensor/operand.js';
-import type { Distribution, HasCdf, HasEntropy, HasMean, HasQuantile, HasVariance } from './distribution.js';
+import type {
+  Distribution,
+  HasEntropy,
+  HasMean,
+  HasQuantiles,
+  HasTails,
+  HasVariance,
+} from './distribution.js';
 import { finite } from './parameters.js';
-import { scalarFamily } from './scalarFamily.js';
+import { quantileRoute } from './routes.js';
 
 /** Parameters of {@link uniform}. */
 export interface UniformOptions {
@@ -24,41 +30,74 @@ export interface Uniform
     HasMean,
     HasVariance,
     HasEntropy,
-    HasCdf,
-    HasQuantile {
+    HasTails,
+    HasQuantiles {
   /** A parameter as the formulas read it, differentiable. */
   parameter(name: 'lower' | 'upper'): tf.Tensor;
 }
 
-const quantile = kernel('uniformQuantile', (p, a, b) => tf.add(a!, tf.mul(p!, tf.sub(b!, a!))));
+// Where a point stands: the distance from one bound, the interval's width, and the function beyond each end.
+function inside(x: tf.Tensor, a: tf.Tensor, b: tf.Tensor): tf.Tensor {
+  return tf.logicalAnd(tf.greater(x, a), tf.less(x, b));
+}
 
-const make = scalarFamily({
+function held(
+  form: (x: tf.Tensor, a: tf.Tensor, b: tf.Tensor) => tf.Tensor,
+  below: number,
+  above: number,
+): (...values: tf.Tensor[]) => tf.Tensor {
+  return (x, a, b) => {
+    const within = inside(x!, a!, b!);
+    const middle = tf.mul(0.5, tf.add(a!, b!));
+    const value = form(
+      when(within, tf.add(x!, tf.zerosLike(middle)), tf.add(middle, tf.zerosLike(x!))),
+      a!,
+      b!,
+    );
+    const high = tf.greaterEqual(x!, b!);
+    const ends = when(
+      tf.logicalAnd(high, tf.onesLike(value).cast('bool')),
+      tf.fill(value.shape, above),
+      tf.fill(value.shape, below),
+    );
+    return tf.add(choose(within, value, 0), choose(tf.logicalNot(within), ends, 0));
+  };
+}
+
+const share = (part: tf.Tensor, rest: tf.Tensor, width: tf.Tensor): tf.Tensor => {
+  const most = tf.less(rest, part);
+  const small = tf.neg(tf.div(when(most, rest, tf.zerosLike(rest)), width));
+  return when(most, composedLog1p(small), tf.log(tf.div(when(most, width, part), width)));
+};
+
+const uniformQuantile = (p: tf.Tensor, a: tf.Tensor, b: tf.Tensor): tf.Tensor =>
+  tf.add(a, tf.mul(p, tf.sub(b, a)));
+
+const make = quantileRoute({
   family: 'uniform',
-  route: 'pathwise',
   support: interval,
   parameters: { lower: { lower: { domain: finite } }, upper: { upper: { domain: finite } } },
-  logDensity: kernel('uniformLogDensity', (x, a, b) => {
-    const inside = tf.logicalAnd(tf.greaterEqual(x!, a!), tf.lessEqual(x!, b!));
-    const value = choose(inside, tf.neg(tf.log(tf.sub(b!, a!))), Number.NEGATIVE_INFINITY);
+  logDensity: (x, a, b) => {
+    const within = tf.logicalAnd(tf.greaterEqual(x!, a!), tf.lessEqual(x!, b!));
+    const value = choose(within, tf.neg(tf.log(tf.sub(b!, a!))), Number.NEGATIVE_INFINITY);
     // A point has a gradient, and it is zero.
     return tf.add(value, stepwise(x!, tf.zerosLike));
-  }),
-  draw: { noise: 'uniform', formula: quantile },
-  summaries: {
-    mean: kernel('uniformMean', (a, b) => tf.mul(0.5, tf.add(a!, b!))),
-    variance: kernel('uniformVariance', (a, b) => tf.div(tf.square(tf.sub(b!, a!)), 12)),
-    entropy: kernel('uniformEntropy', (a, b) => tf.log(tf.sub(b!, a!))),
   },
-  functions: {
-    cdf: kernel('uniformCdf', (x, a, b) => {
-      const above = tf.greaterEqual(x!, b!);
-      const inside = tf.logicalAnd(tf.greater(x!, a!), tf.logicalNot(above));
-      return tf.add(
-        choose(inside, tf.div(tf.sub(x!, a!), tf.sub(b!, a!)), 0),
-        tf.cast(detach(above), 'float32'),
-      );
-    }),
-    quantile,
+  draw: { noise: 'uniform', composed: kernel('uniformQuantile', (p, a, b) => uniformQuantile(p!, a!, b!)) },
+  forms: {
+    mean: (a, b) => tf.mul(0.5, tf.add(a!, b!)),
+    variance: (a, b) => tf.div(tf.square(tf.sub(b!, a!)), 12),
+    entropy: (a, b) => tf.log(tf.sub(b!, a!)),
+    cdf: held((x, a, b) => tf.div(tf.sub(x, a), tf.sub(b, a)), 0, 1),
+    survival: held((x, a, b) => tf.div(tf.sub(b, x), tf.sub(b, a)), 1, 0),
+    logCdf: held((x, a, b) => share(tf.sub(x, a), tf.sub(b, x), tf.sub(b, a)), Number.NEGATIVE_INFINITY, 0),
+    logSurvival: held(
+      (x, a, b) => share(tf.sub(b, x), tf.sub(x, a), tf.sub(b, a)),
+      0,
+      Number.NEGATIVE_INFINITY,
+    ),
+    quantile: (p, a, b) => uniformQuantile(p!, a!, b!),
+    upperQuantile: (p, a, b) => uniformQuantile(p!, b!, a!),
   },
   check: requireOrder,
 });

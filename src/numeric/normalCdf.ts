@@ -48,3 +48,8 @@ export function logNormalCdfDerivative(x: number): number {
   }
   return SQRT_2_OVER_PI / erfcx(-x * SQRT_HALF);
 }
+
+/** x times that; zero at the upper end, where the product of the two is not a number. */
+export function scaledLogNormalCdfDerivative(x: number): number {
+  return x > 40.0 ? 0.0 : x * logNormalCdfDerivative(x);
+}

@@ -137,3 +137,35 @@ export function laplaceKl_otherScale(
   const gap = Math.abs(location - otherLocation);
   return -((scale - otherScale) / otherScale + shift(gap, scale, otherScale)) / otherScale;
 }
+
+/** Survival function, by symmetry the distribution function at −z. @kernel located probability */
+export function laplaceSurvival(z: number): number {
+  return z > 0.0 ? 0.5 * Math.exp(-z) : 1.0 - 0.5 * Math.exp(z);
+}
+export function laplaceSurvival_z(z: number): number {
+  return -0.5 * Math.exp(-Math.abs(z));
+}
+
+/** Log distribution function, z − log 2 below the location and log(1 − ½ exp(−z)) above. @kernel located probability */
+export function laplaceLogCdf(z: number): number {
+  return z < 0.0 ? z - log2 : Math.log1p(-0.5 * Math.exp(-z));
+}
+export function laplaceLogCdf_z(z: number): number {
+  return z < 0.0 ? 1.0 : 1.0 / (2.0 * Math.exp(z) - 1.0);
+}
+
+/** Log survival function. @kernel located probability */
+export function laplaceLogSurvival(z: number): number {
+  return laplaceLogCdf(-z);
+}
+export function laplaceLogSurvival_z(z: number): number {
+  return -laplaceLogCdf_z(-z);
+}
+
+/** Upper quantile. @kernel located point */
+export function laplaceUpperQuantile(p: number): number {
+  return -standardQuantile(p);
+}
+export function laplaceUpperQuantile_p(p: number): number {
+  return -1.0 / (p < 0.5 ? p : 1.0 - p);
+}

@@ -2,7 +2,14 @@
 // Source: Johnson, Kotz and Balakrishnan, Continuous Univariate Distributions 1 (1994), chapter 14.
 import { HALF_LOG_2PI } from '../constants.js';
 import { logDistance } from '../logDistance.js';
-import { normalCdf, normalDensity, scaledNormalDensity } from '../normalCdf.js';
+import {
+  logNormalCdf,
+  logNormalCdfDerivative,
+  normalCdf,
+  normalDensity,
+  scaledLogNormalCdfDerivative,
+  scaledNormalDensity,
+} from '../normalCdf.js';
 import { normalQuantile, normalQuantile_x } from '../normalQuantile.js';
 import { outside } from '../outside.js';
 
@@ -117,5 +124,86 @@ export function logNormalQuantileOf_location(p: number, location: number, scale:
 }
 export function logNormalQuantileOf_scale(p: number, location: number, scale: number): number {
   const q = normalQuantile(p);
+  return q * Math.exp(location + scale * q);
+}
+
+/** Survival function, Φ(−z). @kernel */
+export function logNormalSurvivalOf(x: number, location: number, scale: number): number {
+  if (x <= 0.0) return 1.0;
+  const z = logDistance(x, location) / scale;
+  return normalCdf(-z);
+}
+export function logNormalSurvivalOf_x(x: number, location: number, scale: number): number {
+  if (!(x > 0.0)) return 0.0;
+  const z = logDistance(x, location) / scale;
+  return -normalDensity(z) / scale / x;
+}
+export function logNormalSurvivalOf_location(x: number, location: number, scale: number): number {
+  if (!(x > 0.0)) return 0.0;
+  const z = logDistance(x, location) / scale;
+  return -(-normalDensity(z)) / scale;
+}
+export function logNormalSurvivalOf_scale(x: number, location: number, scale: number): number {
+  if (!(x > 0.0)) return 0.0;
+  const z = logDistance(x, location) / scale;
+  return -(-scaledNormalDensity(z)) / scale;
+}
+
+/** Log distribution function, log Φ(z). @kernel */
+export function logNormalLogCdfOf(x: number, location: number, scale: number): number {
+  if (x <= 0.0) return -Infinity;
+  const z = logDistance(x, location) / scale;
+  return logNormalCdf(z);
+}
+export function logNormalLogCdfOf_x(x: number, location: number, scale: number): number {
+  if (!(x > 0.0)) return 0.0;
+  const z = logDistance(x, location) / scale;
+  return logNormalCdfDerivative(z) / scale / x;
+}
+export function logNormalLogCdfOf_location(x: number, location: number, scale: number): number {
+  if (!(x > 0.0)) return 0.0;
+  const z = logDistance(x, location) / scale;
+  return -logNormalCdfDerivative(z) / scale;
+}
+export function logNormalLogCdfOf_scale(x: number, location: number, scale: number): number {
+  if (!(x > 0.0)) return 0.0;
+  const z = logDistance(x, location) / scale;
+  return -scaledLogNormalCdfDerivative(z) / scale;
+}
+
+/** Log survival function, log Φ(−z). @kernel */
+export function logNormalLogSurvivalOf(x: number, location: number, scale: number): number {
+  if (x <= 0.0) return 0.0;
+  const z = logDistance(x, location) / scale;
+  return logNormalCdf(-z);
+}
+export function logNormalLogSurvivalOf_x(x: number, location: number, scale: number): number {
+  if (!(x > 0.0)) return 0.0;
+  const z = logDistance(x, location) / scale;
+  return -logNormalCdfDerivative(-z) / scale / x;
+}
+export function logNormalLogSurvivalOf_location(x: number, location: number, scale: number): number {
+  if (!(x > 0.0)) return 0.0;
+  const z = logDistance(x, location) / scale;
+  return -(-logNormalCdfDerivative(-z)) / scale;
+}
+export function logNormalLogSurvivalOf_scale(x: number, location: number, scale: number): number {
+  if (!(x > 0.0)) return 0.0;
+  const z = logDistance(x, location) / scale;
+  return -scaledLogNormalCdfDerivative(-z) / scale;
+}
+
+/** Upper quantile, exp(location − scale · Φ⁻¹(p)). @kernel */
+export function logNormalUpperQuantileOf(p: number, location: number, scale: number): number {
+  return Math.exp(location - scale * normalQuantile(p));
+}
+export function logNormalUpperQuantileOf_p(p: number, location: number, scale: number): number {
+  return -Math.exp(location - scale * normalQuantile(p)) * scale * normalQuantile_x(p);
+}
+export function logNormalUpperQuantileOf_location(p: number, location: number, scale: number): number {
+  return Math.exp(location - scale * normalQuantile(p));
+}
+export function logNormalUpperQuantileOf_scale(p: number, location: number, scale: number): number {
+  const q = -normalQuantile(p);
   return q * Math.exp(location + scale * q);
 }

@@ -1,6 +1,6 @@
 // The logistic distribution in double precision, with z = (x − location) / scale.
 // Source: Johnson, Kotz and Balakrishnan, Continuous Univariate Distributions 2 (1995), chapter 23.
-import { sigmoid, sigmoid_x } from '../sigmoid.js';
+import { logSigmoid, sigmoid, sigmoid_x } from '../sigmoid.js';
 import { logOdds } from '../transforms.js';
 
 const piSquaredThird = 3.28986813369645287294;
@@ -65,4 +65,36 @@ export function logisticQuantile_location(_p: number, _location: number, _scale:
 }
 export function logisticQuantile_scale(p: number, _location: number, _scale: number): number {
   return logOdds(p);
+}
+
+/** Survival function, 1 / (1 + exp(z)). @kernel located probability */
+export function logisticSurvival(z: number): number {
+  return sigmoid(-z);
+}
+export function logisticSurvival_z(z: number): number {
+  return -sigmoid_x(z);
+}
+
+/** Log distribution function, −log(1 + exp(−z)). @kernel located probability */
+export function logisticLogCdf(z: number): number {
+  return logSigmoid(z);
+}
+export function logisticLogCdf_z(z: number): number {
+  return sigmoid(-z);
+}
+
+/** Log survival function, −log(1 + exp(z)). @kernel located probability */
+export function logisticLogSurvival(z: number): number {
+  return logSigmoid(-z);
+}
+export function logisticLogSurvival_z(z: number): number {
+  return -sigmoid(z);
+}
+
+/** Upper quantile, log((1 − p) / p). @kernel located point */
+export function logisticUpperQuantile(p: number): number {
+  return -logOdds(p);
+}
+export function logisticUpperQuantile_p(p: number): number {
+  return -1.0 / (p * (1.0 - p));
 }

@@ -3,7 +3,14 @@
 import { HALF_LOG_2PI } from '../constants.js';
 import { logRatio } from '../deviance.js';
 import { log1pmx } from '../log1pmx.js';
-import { normalCdf, normalDensity, scaledNormalDensity } from '../normalCdf.js';
+import {
+  logNormalCdf,
+  logNormalCdfDerivative,
+  normalCdf,
+  normalDensity,
+  scaledLogNormalCdfDerivative,
+  scaledNormalDensity,
+} from '../normalCdf.js';
 import { normalQuantile, normalQuantile_x } from '../normalQuantile.js';
 
 /** Log density, −½ z² − log sd − ½ log 2π. @kernel */
@@ -102,4 +109,72 @@ export function normalKl_otherMean(mean: number, _sd: number, otherMean: number,
 export function normalKl_otherSd(mean: number, sd: number, otherMean: number, otherSd: number): number {
   const d = (mean - otherMean) / otherSd;
   return -(((sd - otherSd) / otherSd) * ((sd + otherSd) / otherSd) + d * d) / otherSd;
+}
+
+/** Survival function, Φ(−z). @kernel */
+export function normalSurvivalOf(x: number, mean: number, sd: number): number {
+  const z = (x - mean) / sd;
+  return normalCdf(-z);
+}
+export function normalSurvivalOf_x(x: number, mean: number, sd: number): number {
+  const z = (x - mean) / sd;
+  return -normalDensity(z) / sd;
+}
+export function normalSurvivalOf_mean(x: number, mean: number, sd: number): number {
+  const z = (x - mean) / sd;
+  return -(-normalDensity(z)) / sd;
+}
+export function normalSurvivalOf_sd(x: number, mean: number, sd: number): number {
+  const z = (x - mean) / sd;
+  return -(-scaledNormalDensity(z)) / sd;
+}
+
+/** Log distribution function, log Φ(z). @kernel */
+export function normalLogCdfOf(x: number, mean: number, sd: number): number {
+  const z = (x - mean) / sd;
+  return logNormalCdf(z);
+}
+export function normalLogCdfOf_x(x: number, mean: number, sd: number): number {
+  const z = (x - mean) / sd;
+  return logNormalCdfDerivative(z) / sd;
+}
+export function normalLogCdfOf_mean(x: number, mean: number, sd: number): number {
+  const z = (x - mean) / sd;
+  return -logNormalCdfDerivative(z) / sd;
+}
+export function normalLogCdfOf_sd(x: number, mean: number, sd: number): number {
+  const z = (x - mean) / sd;
+  return -scaledLogNormalCdfDerivative(z) / sd;
+}
+
+/** Log survival function, log Φ(−z). @kernel */
+export function normalLogSurvivalOf(x: number, mean: number, sd: number): number {
+  const z = (x - mean) / sd;
+  return logNormalCdf(-z);
+}
+export function normalLogSurvivalOf_x(x: number, mean: number, sd: number): number {
+  const z = (x - mean) / sd;
+  return -logNormalCdfDerivative(-z) / sd;
+}
+export function normalLogSurvivalOf_mean(x: number, mean: number, sd: number): number {
+  const z = (x - mean) / sd;
+  return -(-logNormalCdfDerivative(-z)) / sd;
+}
+export function normalLogSurvivalOf_sd(x: number, mean: number, sd: number): number {
+  const z = (x - mean) / sd;
+  return -scaledLogNormalCdfDerivative(-z) / sd;
+}
+
+/** Upper quantile, mean − sd · Φ⁻¹(p). @kernel */
+export function normalUpperQuantileOf(p: number, mean: number, sd: number): number {
+  return mean - sd * normalQuantile(p);
+}
+export function normalUpperQuantileOf_p(p: number, _mean: number, sd: number): number {
+  return -sd * normalQuantile_x(p);
+}
+export function normalUpperQuantileOf_mean(_p: number, _mean: number, _sd: number): number {
+  return 1.0;
+}
+export function normalUpperQuantileOf_sd(p: number, _mean: number, _sd: number): number {
+  return -normalQuantile(p);
 }

@@ -1,5 +1,6 @@
 // The uniform distribution between `lower` and `upper` in double precision.
 // Source: Johnson, Kotz and Balakrishnan, Continuous Univariate Distributions 2 (1995), chapter 26.
+import { logRatio } from '../deviance.js';
 import { lostBits } from '../lostBits.js';
 import { outside } from '../outside.js';
 
@@ -126,4 +127,71 @@ export function uniformKl_otherUpper(
   otherUpper: number,
 ): number {
   return 1.0 / (otherUpper - otherLower);
+}
+
+/** Survival function, (upper − x) / (upper − lower) held to [0, 1]. @kernel */
+export function uniformSurvival(x: number, lower: number, upper: number): number {
+  if (x <= lower) return 1.0;
+  if (x >= upper) return 0.0;
+  return (upper - x) / (upper - lower);
+}
+export function uniformSurvival_x(x: number, lower: number, upper: number): number {
+  return -uniformCdf_x(x, lower, upper);
+}
+export function uniformSurvival_lower(x: number, lower: number, upper: number): number {
+  return -uniformCdf_lower(x, lower, upper);
+}
+export function uniformSurvival_upper(x: number, lower: number, upper: number): number {
+  return -uniformCdf_upper(x, lower, upper);
+}
+
+// log(part / (part + rest)), by the smaller of the two.
+function logShare(part: number, rest: number, whole: number): number {
+  return rest < part ? Math.log1p(-rest / whole) : logRatio(part, whole);
+}
+
+/** Log distribution function. @kernel */
+export function uniformLogCdf(x: number, lower: number, upper: number): number {
+  if (x <= lower) return -Infinity;
+  if (x >= upper) return 0.0;
+  return logShare(x - lower, upper - x, upper - lower);
+}
+export function uniformLogCdf_x(x: number, lower: number, upper: number): number {
+  return x > lower && x < upper ? 1.0 / (x - lower) : 0.0;
+}
+export function uniformLogCdf_lower(x: number, lower: number, upper: number): number {
+  return x > lower && x < upper ? (x - upper) / (upper - lower) / (x - lower) : 0.0;
+}
+export function uniformLogCdf_upper(x: number, lower: number, upper: number): number {
+  return x > lower && x < upper ? -1.0 / (upper - lower) : 0.0;
+}
+
+/** Log survival function. @kernel */
+export function uniformLogSurvival(x: number, lower: number, upper: number): number {
+  if (x <= lower) return 0.0;
+  if (x >= upper) return -Infinity;
+  return logShare(upper - x, x - lower, upper - lower);
+}
+export function uniformLogSurvival_x(x: number, lower: number, upper: number): number {
+  return x > lower && x < upper ? -1.0 / (upper - x) : 0.0;
+}
+export function uniformLogSurvival_lower(x: number, lower: number, upper: number): number {
+  return x > lower && x < upper ? 1.0 / (upper - lower) : 0.0;
+}
+export function uniformLogSurvival_upper(x: number, lower: number, upper: number): number {
+  return x > lower && x < upper ? (x - lower) / (upper - lower) / (upper - x) : 0.0;
+}
+
+/** Upper quantile, upper (1 − p) + lower p: either term may be what is left. @kernel */
+export function uniformUpperQuantile(p: number, lower: number, upper: number): number {
+  return upper * (1.0 - p) + lower * p;
+}
+export function uniformUpperQuantile_p(_p: number, lower: number, upper: number): number {
+  return lower - upper;
+}
+export function uniformUpperQuantile_lower(p: number, _lower: number, _upper: number): number {
+  return p;
+}
+export function uniformUpperQuantile_upper(p: number, _lower: number, _upper: number): number {
+  return 1.0 - p;
 }

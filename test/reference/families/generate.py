@@ -116,7 +116,8 @@ def plain(family):
         natural = natural.split()
         for at, names in enumerate(parametrizations(family, natural)):
             # Behind a transform the formula is the same; fewer points show that the transform is applied.
-            few = {'count': 45, 'corners': 25} if at > 0 and family in DIGITS else {}
+            tail = function in ('survival', 'logCdf', 'logSurvival', 'upperQuantile')
+            few = {'count': 45, 'corners': 25} if at > 0 and (family in DIGITS or tail) else {}
             yield record(family, function, names, kernel, formula, natural, partials.split(),
                          points.points(family, function, names, **few))
 

@@ -282,6 +282,9 @@ POINTS['logNormal'] = {
     'entropy': (lambda d: (center(d), spread(d)), MODERATES + [(f32(-1.4189385), s) for s in (1.0, step(1.0, 1), step(1.0, -1))]),
     'kl': POINTS['normal']['kl'],
 }
+for family in ('normal', 'laplace', 'logistic', 'logNormal', 'uniform'):
+    POINTS[family].update({name: POINTS[family]['cdf'] for name in ('survival', 'logCdf', 'logSurvival')})
+    POINTS[family]['upperQuantile'] = POINTS[family]['quantile']
 
 
 def points(family, function, names, count=220, corners=None):

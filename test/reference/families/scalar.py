@@ -195,6 +195,64 @@ def poisson_kl(r, s):
     return [r * log(r / s), -r, s]
 
 
+# ---- the tails of the symmetric families, and of the uniform
+def tail_forms(family, cdf, log_cdf, standard, lead, names, suffix=''):
+    """Survival, logarithms and upper quantile from the standard member's cdf, its logarithm and its quantile."""
+    def z(x, l, s):
+        return (lead(x) - l) / s
+    x = f'x {names}'
+    return {
+        'survival': (f'{family}Survival{suffix}', lambda v, l, s: [cdf(-z(v, l, s))], x, x),
+        'logCdf': (f'{family}LogCdf{suffix}', lambda v, l, s: [log_cdf(z(v, l, s))], x, x),
+        'logSurvival': (f'{family}LogSurvival{suffix}', lambda v, l, s: [log_cdf(-z(v, l, s))], x, x),
+    }
+
+
+def log_phi(z):
+    if z.value < -mpf(10) ** 6:
+        # The first terms of the asymptotic series of the tail: the next is below 1e-60 of it.
+        r = 1 / square(z)
+        series = 1 - r * (1 - 3 * r * (1 - 5 * r * (1 - 7 * r * (1 - 9 * r))))
+        return -square(z) / 2 - log(-z) + constant(-log_2pi() / 2, z) + log(series)
+    if z.value > 40:
+        tail = phi(-z)
+        return log1p(-tail)
+    return log(phi(z))
+
+
+def laplace_standard(z):
+    return exp(z) / 2 if z.value < 0 else 1 - exp(-z) / 2
+
+
+def laplace_log(z):
+    return z - mpmath.log(2) if z.value < 0 else log1p(-exp(-z) / 2)
+
+
+def laplace_inverse(p):
+    return log(2 * p) if p.value < 0.5 else -log(2 * (1 - p))
+
+
+def upper(family, standard, names, suffix='', carried=None):
+    formula = carried or (lambda p, l, s: [l, -s * standard(p)])
+    return {'upperQuantile': (f'{family}UpperQuantile{suffix}', formula, f'p {names}', f'p {names}')}
+
+
+def between(a, b, x, inside, below, above):
+    return below if x.value <= a.value else above if x.value >= b.value else inside()
+
+
+def uniform_survival(x, a, b):
+    return [between(a, b, x, lambda: (b - x) / (b - a), constant(1, x), constant(0, x))]
+
+
+def uniform_log_cdf(x, a, b):
+    return [between(a, b, x, lambda: log((x - a) / (b - a)), constant(MINUS_INFINITY, x), constant(0, x))]
+
+
+def uniform_log_survival(x, a, b):
+    return [between(a, b, x, lambda: log((b - x) / (b - a)), constant(0, x), constant(MINUS_INFINITY, x))]
+
+
 # kernel in the sources, the formula here, its arguments (natural parameters by name), the ones it has a partial in.
 FUNCTIONS = {
     'normal': {
@@ -281,3 +339,24 @@ FUNCTIONS = {
         'kl': ('poissonKl', poisson_kl, 'rate otherRate', 'rate otherRate'),
     },
 }
+
+def same(x):
+    return x
+
+
+for family, own in {
+    'normal': tail_forms('normal', phi, log_phi, probit, same, 'mean sd', 'Of') | upper('normal', probit, 'mean sd', 'Of'),
+    'logNormal': tail_forms('logNormal', phi, log_phi, probit, log, 'location scale', 'Of')
+    | upper('logNormal', probit, 'location scale', 'Of', lambda p, l, s: [exp(l - s * probit(p))]),
+    'laplace': tail_forms('laplace', laplace_standard, laplace_log, laplace_inverse, same, 'location scale')
+    | upper('laplace', laplace_inverse, 'location scale'),
+    'logistic': tail_forms('logistic', sigmoid, lambda z: -softplus(-z), None, same, 'location scale')
+    | upper('logistic', lambda p: log(p) - log1p(-p), 'location scale'),
+    'uniform': {
+        'survival': ('uniformSurvival', uniform_survival, 'x lower upper', 'x lower upper'),
+        'logCdf': ('uniformLogCdf', uniform_log_cdf, 'x lower upper', 'x lower upper'),
+        'logSurvival': ('uniformLogSurvival', uniform_log_survival, 'x lower upper', 'x lower upper'),
+        'upperQuantile': ('uniformUpperQuantile', lambda p, a, b: [b * (1 - p), a * p], 'p lower upper', 'p lower upper'),
+    },
+}.items():
+    FUNCTIONS[family].update(own)
