@@ -85,7 +85,7 @@ export class Stream {
   }
 
   /**
-   * Standard normals, float32, by a 256-layer ziggurat in double precision with an exact tail (Marsaglia and
+   * Standard normals, float32, by a 1024-layer ziggurat in double precision with an exact tail (Marsaglia and
    * Tsang 2000). Throws a `ShapeError` unless `shape` is an array of whole numbers.
    *
    * @example
@@ -101,7 +101,7 @@ export class Stream {
   }
 
   /**
-   * Standard exponentials (rate 1), float32, never 0, by a 256-layer ziggurat in double precision with an
+   * Standard exponentials (rate 1), float32, never 0, by a 1024-layer ziggurat in double precision with an
    * exact tail. Throws a `ShapeError` unless `shape` is an array of whole numbers.
    *
    * @example

@@ -18,8 +18,8 @@ import {
 } from '../../src/random/noise.js';
 import { stream } from '../../src/random/stream.js';
 
-// The words of a stream, and with them every draw, are a promise to whoever stored a seed: these bits were
-// written down at the first release and change with a new StreamState version only.
+// The words of a stream are a promise to whoever stored a seed or a state: they change with a new StreamState
+// version only. The draws that are made of them change only in a release whose changelog says so.
 
 const bits = (draws: Float32Array) =>
   [...new Uint32Array(draws.buffer)].map((word) => word.toString(16).padStart(8, '0')).join(' ');
@@ -56,12 +56,12 @@ it.each<[string, () => string, string]>([
 
 const kinds: Record<NoiseKind, string> = {
   uniform: '3f74cd83 3c4a6023 3ea9c7d7 3f1552d8 3ef15f3f 3f371c65',
-  normal: '3f2b8623 3caf3c78 beede0f6 3f814c7a bf3607eb c0013994',
-  exponential: '3edfb1c1 3ccf8e7e 3ef2f24a 3f99257f 3f439a98 405d3db3',
-  laplace: '3edfb1c1 3ccf8e7e bef2f24a 3f99257f bf439a98 c05d3db3',
+  normal: 'bffe31ae 3c8aa320 3f128499 3f4c968a 3ec5d337 bf453cee',
+  exponential: '402be1ff 3c8bad83 3f2d412c 3f4e1fa7 3e8f29af 3f29880a',
+  laplace: 'c02be1ff 3c8bad83 3f2d412c 3f4e1fa7 3e8f29af bf29880a',
   logistic: 'bdb34509 40a296a1 3fcecea1 3f632c53 3f969195 3f15ebbf',
-  gumbel: '3f53fab1 406b3b8b 3f3ed803 be37ab57 3e89c5a0 bf9ec46e',
-  cauchy: '41fa93ad beeb7d48 3eb44e33 3ea4021a 3e3f2bea 3e9677bd',
+  gumbel: 'bf7ce8f6 40824a58 3ec7e487 3e5de6f1 3fa31da3 3ed303eb',
+  cauchy: 'c2eab0c6 3f375652 bf006188 bed620a6 3e2c07f0 bf026f51',
 };
 it.each(Object.entries(kinds))('first draws: %s', (kind, expected) => {
   expect(bits(noise(stream('golden'), kind as NoiseKind, 6))).toBe(expected);
@@ -70,7 +70,7 @@ it.each(Object.entries(kinds))('first draws: %s', (kind, expected) => {
 it('the first ten thousand normals, with their wedges and tails', () => {
   // A sum of words modulo 2^32 stands for them all.
   const words = new Uint32Array(noise(stream('golden'), 'normal', 10_000).buffer);
-  expect(words.reduce((sum, word) => (sum * 31 + word) % 4294967296, 0)).toBe(1965149690);
+  expect(words.reduce((sum, word) => (sum * 31 + word) % 4294967296, 0)).toBe(4025922302);
 });
 
 it('first integers, order, counts, categories, gammas', () => {
@@ -78,7 +78,7 @@ it('first integers, order, counts, categories, gammas', () => {
   expect([...s.integers(1000, [6]).dataSync()]).toEqual([956, 12, 331, 583, 471, 715]);
   expect([...s.permutation(8).dataSync()]).toEqual([6, 2, 1, 7, 5, 0, 4, 3]);
   expect([...poissonDraws(s, Float32Array.of(0, 1e-3, 0.5, 3, 9.99, 10, 1e3, 1e6, 1e8))]).toEqual([
-    0, 0, 2, 2, 15, 10, 1031, 999843, 99986448,
+    0, 0, 2, 3, 14, 10, 1031, 999843, 99986448,
   ]);
   expect([
     ...categoricalDraws(
@@ -87,9 +87,9 @@ it('first integers, order, counts, categories, gammas', () => {
       3,
     ),
   ]).toEqual([2, 1, 0, 2, 0, 1, 2, 2]);
-  expect(bits(gammaDraws(s, Float32Array.of(0.1, 1, 2.5, 1e4)))).toBe('3d894c55 400e3944 400ac2f0 461b1263');
+  expect(bits(gammaDraws(s, Float32Array.of(0.1, 1, 2.5, 1e4)))).toBe('3e0be385 3f2b2c14 3fdaf6bf 461ca55e');
   expect(bits(logGammaDraws(s, Float32Array.of(1e-3, 0.1, 1, 2.5, 1e4)))).toBe(
-    'c402d2cc c06397be c07cd268 3ee1f53b 4113633a',
+    'c4e09183 c10725bb bf36c920 3f1503d2 41134253',
   );
 });
 
@@ -105,14 +105,14 @@ it('first draws of the laws with parameters', () => {
     bits(vonMisesDraws(s, f(1e-6, 1, 30, 1e8))),
     bits(inverseGaussianDraws(s, f(1, 1, 1e3, 2), f(1e-3, 1, 30, 1e6))),
   ]).toEqual([
-    '6e2a53b2 40706d4b 3f850684',
-    '58e8c4cd 408ccc1f 3fa7390f',
-    '3b14587d 3f325161 3ae866e9',
-    'c2af34ce baf2cebf c0db7d16',
-    'c05418d9 be7641c5 c0baccc6',
-    '403ebaf0 414071ae 3b5ce17a',
-    '3e12827e bfb092e0 bf806c58 bf6a6cac',
-    '3fcd1408 3fa87811 bcbc5f48 37b82b33',
-    '3b5f873d 3eb6fa83 41900b6a 3fffd088',
+    '69298449 404711dd 406a0964',
+    '632423a2 4009babf 3fb91f7f',
+    '36f1f2d4 3f73a94d 3a89669e',
+    'c1f39268 bc3e5a2d c0c51a64',
+    'c200f67e bdf2ff9e c0ae6d82',
+    '2b3abe55 42f2b31e 3bcb05d8',
+    '427f837f c0c51735 3f23b975 3dd96e8c',
+    'c00370b3 bf960a63 bdb36f2d 37fe4283',
+    '3adee4d8 3e84303a 41ae45d9 3fffb41e',
   ]);
 });

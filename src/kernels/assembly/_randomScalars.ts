@@ -1,5 +1,5 @@
 // Compiled by AssemblyScript only. One draw at a time, in double precision, from the two laws that the others
-// are made of. Of a 64-bit word, bits 0-7 choose the layer, bit 8 the sign, and bits 12-63 the place within
+// are made of. Of a 64-bit word, bits 0-9 choose the layer, bit 10 the sign, and bits 12-63 the place within
 // the layer: no two of the three share a bit.
 import { nextCell, nextFine, nextWord } from './_randomWords';
 import {
@@ -25,19 +25,19 @@ function placeOf(word: u64): f64 {
 // @ts-ignore: decorator
 @inline
 function layerOf(table: usize, word: u64): usize {
-  return table + ((<usize>word & 255) << 4);
+  return table + ((<usize>word & 1023) << 4);
 }
 
 // @ts-ignore: decorator
 @inline
 function heightOf(table: usize, word: u64): usize {
-  return table + ((<usize>word & 255) << 3);
+  return table + ((<usize>word & 1023) << 3);
 }
 
 // @ts-ignore: decorator
 @inline
 export function signed(x: f64, word: u64): f64 {
-  return reinterpret<f64>(reinterpret<u64>(x) | ((word & 256) << 55));
+  return reinterpret<f64>(reinterpret<u64>(x) | ((word & 1024) << 53));
 }
 
 // For loops that keep their place among the words themselves: a draw that its first word decides, or −1 where more

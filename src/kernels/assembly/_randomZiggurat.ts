@@ -1,23 +1,23 @@
 // Compiled by AssemblyScript only. Tables of the ziggurat method (G. Marsaglia and W. W. Tsang, The ziggurat
 // method for generating random variables, J. Stat. Software 5(8), 2000) for the half normal and the
-// exponential, 256 layers of equal area each, computed when the module starts, with its own Math, so that
+// exponential, 1,024 layers of equal area each, computed when the module starts, with its own Math, so that
 // they have the same bits in every engine.
 //
 // Layer i lies between heights f(x[i]) and f(x[i+1]) and has width x[i]; x[1] = r, where the tail starts;
-// x[0] = area / f(r) is the width of a rectangle with the area of the bottom layer, tail included; x[256] = 0.
+// x[0] = area / f(r) is the width of a rectangle with the area of the bottom layer, tail included; x[1024] = 0.
 
-const LAYERS: i32 = 256;
+const LAYERS: i32 = 1024;
 const CELLS: f64 = 9007199254740992.0;
 
-/** Where the tail starts, so that 256 layers close at the mode; recomputed in the tests. */
-export const NORMAL_TAIL: f64 = 3.6541528853610088;
-export const EXPONENTIAL_TAIL: f64 = 7.69711747013104972;
+/** Where the tail starts, so that the layers close at the mode; recomputed in the tests. */
+export const NORMAL_TAIL: f64 = 4.038849846109504;
+export const EXPONENTIAL_TAIL: f64 = 9.256164544265545;
 
 // Per layer 16 bytes, its width and the share of it that lies under the next layer as well; the heights f(x[i]) apart.
-export const normalLayers: usize = memory.data(256 * 16, 16);
-export const exponentialLayers: usize = memory.data(256 * 16, 16);
-export const normalHeights: usize = memory.data(257 * 8, 16);
-export const exponentialHeights: usize = memory.data(257 * 8, 16);
+export const normalLayers: usize = memory.data(1024 * 16, 16);
+export const exponentialLayers: usize = memory.data(1024 * 16, 16);
+export const normalHeights: usize = memory.data(1025 * 8, 16);
+export const exponentialHeights: usize = memory.data(1025 * 8, 16);
 
 function writeLayer(layers: usize, heights: usize, i: i32, width: f64, next: f64, low: f64, high: f64): void {
   const at = layers + <usize>(16 * i);

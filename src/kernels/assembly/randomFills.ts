@@ -30,7 +30,7 @@ function placesOf(words: v128): v128 {
 // @ts-ignore: decorator
 @inline
 function layerAt(layers: usize, word: usize): v128 {
-  return v128.load(layers + (<usize>load<u8>(word) << 4));
+  return v128.load(layers + ((<usize>load<u16>(word) & 1023) << 4));
 }
 
 /**
@@ -58,7 +58,7 @@ function fillZiggurat(out: usize, n: i32, layers: usize, signs: bool, one: i32):
       let x = v128.shuffle<f64>(f32x4.demote_f64x2_zero(x0), f32x4.demote_f64x2_zero(x2), 0, 2);
       if (signs) {
         const bits = v128.shuffle<i32>(word0, word2, 0, 2, 4, 6);
-        x = v128.or(x, v128.and(i32x4.shl(bits, 23), i32x4.splat(0x80000000)));
+        x = v128.or(x, v128.and(i32x4.shl(bits, 21), i32x4.splat(0x80000000)));
       }
       v128.store(out, x);
       const outside0 = f64x2.ge(place0, v128.shuffle<f64>(layer0, layer1, 1, 3));
