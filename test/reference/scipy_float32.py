@@ -91,44 +91,49 @@ SPECIAL = {
     'logOdds': sc.logit, 'betaIInverse': lambda a, b, p: sc.betaincinv(a, b, p),
 }
 
-result = {}
-for path in sorted(glob.glob(os.path.join(HERE, '*.json'))):
-    if path.endswith('hard.json'):
-        continue
-    for name, rows in json.load(open(path)).items():
-        if name not in SPECIAL:
+def main():
+    result = {}
+    for path in sorted(glob.glob(os.path.join(HERE, '*.json'))):
+        if path.endswith('hard.json'):
             continue
-        columns = np.array([[float(v) for v in row] for row in rows]).T
-        got = np.asarray(SPECIAL[name](*[c.astype(f) for c in columns[:-1]]))
-        result[f'{name}: value'] = written(score(got, columns[-1]))
-for path in sorted(glob.glob(os.path.join(HERE, 'families', '*.json'))):
-    family = os.path.basename(path)[:-5]
-    if family not in FAMILIES:
-        continue
-    own = FAMILIES[family].__code__.co_varnames
-    for record in json.load(open(path)):
-        method, names = METHODS.get(record['function']), record['arguments']
-        lead = [n for n in names if n in 'xp']
-        parameters = [n for n in names if n not in lead]
-        # A function that does not read all parameters is that of a standard member in the others.
-        if method is None or any(record['transforms']) or record.get('joint') or not set(parameters) <= set(own):
+        for name, rows in json.load(open(path)).items():
+            if name not in SPECIAL:
+                continue
+            columns = np.array([[float(v) for v in row] for row in rows]).T
+            got = np.asarray(SPECIAL[name](*[c.astype(f) for c in columns[:-1]]))
+            result[f'{name}: value'] = written(score(got, columns[-1]))
+    for path in sorted(glob.glob(os.path.join(HERE, 'families', '*.json'))):
+        family = os.path.basename(path)[:-5]
+        if family not in FAMILIES:
             continue
-        columns = {n: np.array([row[k] for row in record['rows']], dtype=f) for k, n in enumerate(names)}
-        count = len(record['rows'])
-        exact = np.array([float(row[len(names)]) for row in record['rows']])
-        rest = {'location': f(0), 'scale': f(1), 'mean': f(0), 'sd': f(1), 'shape': f(1)}
-        given = {n: columns.get(n, np.full(count, rest.get(n, f(1)), dtype=f)) for n in own}
-        name = 'logpmf' if method == 'logpdf' and family == 'poisson' else method
-        try:
-            d = FAMILIES[family](**given)
-            got = np.asarray(getattr(d, name)(*[columns[n] for n in lead]))
-        except Exception as error:
-            result[f'{family}.{record["function"]}({", ".join(names)}): value'] = 'fails'
-            continue
-        sizes = np.array([float(row[len(names) + 1 + len(record['partials'])]) for row in record['rows']])
-        errors = score(got, exact)
-        errors = np.where(np.abs(got.astype(f).astype(float) - exact) <= 2.0 ** -50 * sizes, 0, errors)
-        errors = np.where(got.astype(float) == exact, 0, errors)
-        result[f'{family}.{record["function"]}({", ".join(names)}): value'] = written(errors)
-result['version'] = scipy.__version__
-print(json.dumps(result, indent=0))
+        own = FAMILIES[family].__code__.co_varnames
+        for record in json.load(open(path)):
+            method, names = METHODS.get(record['function']), record['arguments']
+            lead = [n for n in names if n in 'xp']
+            parameters = [n for n in names if n not in lead]
+            # A function that does not read all parameters is that of a standard member in the others.
+            if method is None or any(record['transforms']) or record.get('joint') or not set(parameters) <= set(own):
+                continue
+            columns = {n: np.array([row[k] for row in record['rows']], dtype=f) for k, n in enumerate(names)}
+            count = len(record['rows'])
+            exact = np.array([float(row[len(names)]) for row in record['rows']])
+            rest = {'location': f(0), 'scale': f(1), 'mean': f(0), 'sd': f(1), 'shape': f(1)}
+            given = {n: columns.get(n, np.full(count, rest.get(n, f(1)), dtype=f)) for n in own}
+            name = 'logpmf' if method == 'logpdf' and family == 'poisson' else method
+            try:
+                d = FAMILIES[family](**given)
+                got = np.asarray(getattr(d, name)(*[columns[n] for n in lead]))
+            except Exception as error:
+                result[f'{family}.{record["function"]}({", ".join(names)}): value'] = 'fails'
+                continue
+            sizes = np.array([float(row[len(names) + 1 + len(record['partials'])]) for row in record['rows']])
+            errors = score(got, exact)
+            errors = np.where(np.abs(got.astype(f).astype(float) - exact) <= 2.0 ** -50 * sizes, 0, errors)
+            errors = np.where(got.astype(float) == exact, 0, errors)
+            result[f'{family}.{record["function"]}({", ".join(names)}): value'] = written(errors)
+    result['version'] = scipy.__version__
+    print(json.dumps(result, indent=0))
+
+
+if __name__ == '__main__':
+    main()
