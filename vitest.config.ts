@@ -10,6 +10,10 @@ export default defineConfig({
         find: /^leadline\/conformance$/,
         replacement: fileURLToPath(new URL('src/conformance/index.ts', import.meta.url)),
       },
+      {
+        find: /^leadline\/numeric$/,
+        replacement: fileURLToPath(new URL('src/numeric/index.ts', import.meta.url)),
+      },
     ],
   },
   test: {

@@ -90,7 +90,7 @@ is missing; it needs the Debian package \`dieharder\`.
 | --- | --- | --- | --- | --- | --- |
 ${rows.join('\n')}
 
-${chance.join('\n')}
+${tests > 0 ? chance.join('\n') : 'No run has been finished yet.'}
 ${odd.length > 0 ? `\nNot passed:\n\n${odd.join('\n')}\n` : ''}`,
   );
 }

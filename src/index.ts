@@ -107,21 +107,60 @@ export { detach } from './tensor/detach.js';
 export { lift, type ScalarFormula } from './tensor/lift.js';
 export { logSumExp } from './tensor/logSumExp.js';
 export {
-  digamma,
-  erf,
-  erfc,
-  erfcx,
+  besselI0e,
+  besselI1e,
+  besselRatio,
+  besselRatioComplement,
+  logBesselI0e,
+} from './tensor/special/bessel.js';
+export {
+  betaI,
+  betaIComplement,
+  betaIInverse,
+  betaIInverseComplement,
+  logBeta,
+  logBetaI,
+  logBetaIComplement,
+} from './tensor/special/beta.js';
+export {
   log1mexp,
-  logGamma,
-  logNormalCdf,
+  log1pmx,
+  logAddExp,
   logSigmoid,
-  normalCdf,
-  normalQuantile,
-  normalQuantileFromLog,
+  logSubExp,
   sigmoid,
   softplus,
   softplusInverse,
-} from './tensor/special.js';
+} from './tensor/special/elementary.js';
+export {
+  deviance,
+  digamma,
+  digammaDifference,
+  logGamma,
+  logGamma1p,
+  stirlingError,
+  trigamma,
+} from './tensor/special/gamma.js';
+export {
+  gammaP,
+  gammaPInverse,
+  gammaQ,
+  gammaQInverse,
+  logGammaP,
+  logGammaPInverse,
+  logGammaQ,
+} from './tensor/special/incompleteGamma.js';
+export {
+  erf,
+  erfc,
+  erfcx,
+  logNormalCdf,
+  logNormalCdfDerivative,
+  normalCdf,
+  normalQuantile,
+  normalQuantileFromLog,
+  owenT,
+} from './tensor/special/normal.js';
 export { type BackendOptions, useFastestBackend } from './tensor/useFastestBackend.js';
 export type { BatchData, BatchEntry, DataFor, NumberArray, Tensors } from './training/batchData.js';
 export { checkpoint, resume } from './training/checkpoint.js';

@@ -123,7 +123,15 @@ function expansionSlope(r: number): number {
   return r * r * p;
 }
 
-/** e^−|x| I₀(x). */
+/**
+ * e^−|x| I₀(x). @kernel
+ * @example
+ * ```ts
+ * import { besselI0e } from 'leadline/numeric';
+ * console.log(besselI0e(2).toPrecision(6));
+ * // 0.308508
+ * ```
+ */
 export function besselI0e(x: number): number {
   const s = Math.abs(x);
   if (s < 30.0) {
@@ -132,12 +140,29 @@ export function besselI0e(x: number): number {
   }
   return expansion0(1.0 / s) / (SQRT_2PI * Math.sqrt(s));
 }
+/**
+ * The partial derivative of `besselI0e` in `x`.
+ * @example
+ * ```ts
+ * import { besselI0e_x } from 'leadline/numeric';
+ * console.log(besselI0e_x(2).toPrecision(6));
+ * // -0.0932390
+ * ```
+ */
 export function besselI0e_x(x: number): number {
   const slope = besselI0e(x) * besselRatioComplement(Math.abs(x));
   return x < 0.0 ? slope : -slope;
 }
 
-/** log(e^−|x| I₀(x)), zero at 0 and negative elsewhere. */
+/**
+ * log(e^−|x| I₀(x)), zero at 0 and negative elsewhere. @kernel
+ * @example
+ * ```ts
+ * import { logBesselI0e } from 'leadline/numeric';
+ * console.log(logBesselI0e(2).toPrecision(6));
+ * // -1.17601
+ * ```
+ */
 export function logBesselI0e(x: number): number {
   const s = Math.abs(x);
   if (s < 30.0) {
@@ -146,12 +171,29 @@ export function logBesselI0e(x: number): number {
   }
   return Math.log(expansion0(1.0 / s)) - HALF_LOG_2PI - 0.5 * Math.log(s);
 }
+/**
+ * The partial derivative of `logBesselI0e` in `x`.
+ * @example
+ * ```ts
+ * import { logBesselI0e_x } from 'leadline/numeric';
+ * console.log(logBesselI0e_x(2).toPrecision(6));
+ * // -0.302225
+ * ```
+ */
 export function logBesselI0e_x(x: number): number {
   const slope = besselRatioComplement(Math.abs(x));
   return x < 0.0 ? slope : -slope;
 }
 
-/** e^−|x| I₁(x), an odd function. */
+/**
+ * e^−|x| I₁(x), an odd function. @kernel
+ * @example
+ * ```ts
+ * import { besselI1e } from 'leadline/numeric';
+ * console.log(besselI1e(2).toPrecision(6));
+ * // 0.215269
+ * ```
+ */
 export function besselI1e(x: number): number {
   const s = Math.abs(x);
   if (s < 30.0) {
@@ -161,7 +203,15 @@ export function besselI1e(x: number): number {
   const value = expansion1(1.0 / s) / (SQRT_2PI * Math.sqrt(s));
   return x < 0.0 ? -value : value;
 }
-/** e^−|x| (I₀ − I₁/x − |I₁|); it crosses zero near 1.545, where only its absolute error is small. */
+/**
+ * e^−|x| (I₀ − I₁/x − |I₁|); it crosses zero near 1.545, where only its absolute error is small.
+ * @example
+ * ```ts
+ * import { besselI1e_x } from 'leadline/numeric';
+ * console.log(besselI1e_x(2).toPrecision(6));
+ * // -0.0143956
+ * ```
+ */
 export function besselI1e_x(x: number): number {
   const s = Math.abs(x);
   if (s < 30.0) {
@@ -171,7 +221,15 @@ export function besselI1e_x(x: number): number {
   return besselI0e(s) * (besselRatioComplement(s) - besselRatio(s) / s);
 }
 
-/** A(x) = I₁(x) / I₀(x) for x ≥ 0, the mean resultant length of a von Mises law of concentration x. */
+/**
+ * A(x) = I₁(x) / I₀(x) for x ≥ 0, the mean resultant length of a von Mises law of concentration x. @kernel
+ * @example
+ * ```ts
+ * import { besselRatio } from 'leadline/numeric';
+ * console.log(besselRatio(2).toPrecision(6));
+ * // 0.697775
+ * ```
+ */
 export function besselRatio(x: number): number {
   if (x < 30.0) {
     powerSeries(x);
@@ -179,7 +237,15 @@ export function besselRatio(x: number): number {
   }
   return 1.0 - expansionComplement(1.0 / x);
 }
-/** A′(x) = 1 − A/x − A², ½ at 0 and 1/(2x²) for large x. */
+/**
+ * A′(x) = 1 − A/x − A², ½ at 0 and 1/(2x²) for large x.
+ * @example
+ * ```ts
+ * import { besselRatio_x } from 'leadline/numeric';
+ * console.log(besselRatio_x(2).toPrecision(6));
+ * // 0.164223
+ * ```
+ */
 export function besselRatio_x(x: number): number {
   if (x < 30.0) {
     powerSeries(x);
@@ -189,7 +255,15 @@ export function besselRatio_x(x: number): number {
   return expansionSlope(1.0 / x);
 }
 
-/** 1 − A(x), the circular variance, which goes like 1/(2x) for large x. */
+/**
+ * 1 − A(x), the circular variance, which goes like 1/(2x) for large x. @kernel
+ * @example
+ * ```ts
+ * import { besselRatioComplement } from 'leadline/numeric';
+ * console.log(besselRatioComplement(1e6).toPrecision(6));
+ * // 5.00000e-7
+ * ```
+ */
 export function besselRatioComplement(x: number): number {
   if (x < 30.0) {
     powerSeries(x);
@@ -197,6 +271,15 @@ export function besselRatioComplement(x: number): number {
   }
   return expansionComplement(1.0 / x);
 }
+/**
+ * The partial derivative of `besselRatioComplement` in `x`.
+ * @example
+ * ```ts
+ * import { besselRatioComplement_x } from 'leadline/numeric';
+ * console.log(besselRatioComplement_x(1e6).toPrecision(6));
+ * // -5.00000e-13
+ * ```
+ */
 export function besselRatioComplement_x(x: number): number {
   return -besselRatio_x(x);
 }

@@ -21,6 +21,8 @@ export const TWO_OVER_SQRT_PI: number = 1.1283791670955126;
 export const SQRT_PI: number = 1.772453850905516;
 /** π. */
 export const PI: number = 3.141592653589793;
+/** π − PI. */
+export const PI_LOW: number = 1.2246467991473532e-16;
 /** log π. */
 export const LOG_PI: number = 1.1447298858494002;
 /** The Euler–Mascheroni constant. */

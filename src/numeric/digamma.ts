@@ -1,6 +1,6 @@
 import { PI } from './constants.js';
 import { digammaSeries } from './stirlingSeries.js';
-import { trigamma } from './trigamma.js';
+import { trigamma, trigammaSeries } from './trigamma.js';
 
 /** The positive zero of ψ, in two parts. */
 const ROOT: number = 1.4616321449683622;
@@ -60,6 +60,12 @@ function digammaNearRoot(x: number): number {
  * ψ(x + 1) = ψ(x) + 1/x leads there; above, the asymptotic series. For x < 0 the reflection
  * ψ(1 − x) − π / tan(πx), which is accurate to double precision in absolute terms: near one of the negative
  * zeros only the absolute error stays small. Source: DLMF 5.5.2, 5.5.4, 5.7.4, 5.11.2. @kernel
+ * @example
+ * ```ts
+ * import { digamma } from 'leadline/numeric';
+ * console.log(digamma(2.5).toPrecision(6));
+ * // 0.703157
+ * ```
  */
 export function digamma(x: number): number {
   if (x >= 6.0) return Math.log(x) - 0.5 / x - digammaSeries(x);
@@ -81,12 +87,42 @@ export function digamma(x: number): number {
   if (away === 0.0) return NaN;
   return digamma(1.0 - x) - (PI * Math.cos(PI * away)) / Math.sin(PI * away);
 }
+/**
+ * The partial derivative of `digamma` in `x`.
+ * @example
+ * ```ts
+ * import { digamma_x } from 'leadline/numeric';
+ * console.log(digamma_x(2.5).toPrecision(6));
+ * // 0.490358
+ * ```
+ */
 export function digamma_x(x: number): number {
   return trigamma(x);
 }
 
-/** ψ(x) − log x for x > 0, without the cancellation at large x: −1/(2x) − 1/(12x²) + …; DLMF 5.11.2. */
+/**
+ * ψ(x) − log x for x > 0, without the cancellation at large x: −1/(2x) − 1/(12x²) + …; DLMF 5.11.2. @kernel
+ * @example
+ * ```ts
+ * import { digammaMinusLog } from 'leadline/numeric';
+ * console.log(digammaMinusLog(2.5).toPrecision(6));
+ * // -0.213134
+ * ```
+ */
 export function digammaMinusLog(x: number): number {
   if (x >= 6.0) return -0.5 / x - digammaSeries(x);
   return digamma(x) - Math.log(x);
+}
+/**
+ * The partial derivative of `digammaMinusLog` in `x`.
+ * @example
+ * ```ts
+ * import { digammaMinusLog_x } from 'leadline/numeric';
+ * console.log(digammaMinusLog_x(2.5).toPrecision(6));
+ * // 0.0903578
+ * ```
+ */
+export function digammaMinusLog_x(x: number): number {
+  if (x >= 8.0) return 0.5 / (x * x) + trigammaSeries(x);
+  return trigamma(x) - 1.0 / x;
 }

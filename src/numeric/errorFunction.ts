@@ -67,28 +67,70 @@ function gaussian(x: number): number {
   return Math.exp(-head * head) * Math.exp(-(x - head) * (x + head));
 }
 
-/** erf(x) = 2/√π ∫₀ˣ e^{−t²} dt, the error function. DLMF 7.2.1. @kernel */
+/**
+ * erf(x) = 2/√π ∫₀ˣ e^{−t²} dt, the error function. DLMF 7.2.1. @kernel
+ * @example
+ * ```ts
+ * import { erf } from 'leadline/numeric';
+ * console.log(erf(0.5).toPrecision(6));
+ * // 0.520500
+ * ```
+ */
 export function erf(x: number): number {
   const a = Math.abs(x);
   if (a <= 1.0) return erfSeries(x);
   const upper = gaussian(a) * scaledUpper(a);
   return x > 0.0 ? 1.0 - upper : upper - 1.0;
 }
+/**
+ * The partial derivative of `erf` in `x`.
+ * @example
+ * ```ts
+ * import { erf_x } from 'leadline/numeric';
+ * console.log(erf_x(0.5).toPrecision(6));
+ * // 0.878783
+ * ```
+ */
 export function erf_x(x: number): number {
   return TWO_OVER_SQRT_PI * gaussian(Math.abs(x));
 }
 
-/** erfc(x) = 1 − erf(x), the complementary error function; the upper tail keeps its relative accuracy. @kernel */
+/**
+ * erfc(x) = 1 − erf(x), the complementary error function; the upper tail keeps its relative accuracy. @kernel
+ * @example
+ * ```ts
+ * import { erfc } from 'leadline/numeric';
+ * console.log(erfc(5).toPrecision(6));
+ * // 1.53746e-12
+ * ```
+ */
 export function erfc(x: number): number {
   if (x > 0.5) return gaussian(x) * scaledUpper(x);
   if (x < -1.0) return 2.0 - gaussian(-x) * scaledUpper(-x);
   return 1.0 - erfSeries(x);
 }
+/**
+ * The partial derivative of `erfc` in `x`.
+ * @example
+ * ```ts
+ * import { erfc_x } from 'leadline/numeric';
+ * console.log(erfc_x(5).toPrecision(6));
+ * // -1.56709e-11
+ * ```
+ */
 export function erfc_x(x: number): number {
   return -TWO_OVER_SQRT_PI * gaussian(Math.abs(x));
 }
 
-/** erfcx(x) = e^{x²} erfc(x), the scaled complementary error function: a tail without its underflow. @kernel */
+/**
+ * erfcx(x) = e^{x²} erfc(x), the scaled complementary error function: a tail without its underflow. @kernel
+ * @example
+ * ```ts
+ * import { erfcx } from 'leadline/numeric';
+ * console.log(erfcx(10).toPrecision(6));
+ * // 0.0561410
+ * ```
+ */
 export function erfcx(x: number): number {
   if (x >= 0.0) return scaledUpper(x);
   if (x < -27.0) return Infinity;
@@ -98,6 +140,12 @@ export function erfcx(x: number): number {
 /**
  * d erfcx(x)/dx = 2x erfcx(x) − 2/√π, negative. From 6 on the difference cancels, and its asymptotic series
  * −2/√π Σ_{k≥1} (−1)^{k−1} (2k − 1)!! / (2x²)^k takes over (DLMF 7.12.1).
+ * @example
+ * ```ts
+ * import { erfcx_x } from 'leadline/numeric';
+ * console.log(erfcx_x(10).toPrecision(6));
+ * // -0.00555931
+ * ```
  */
 export function erfcx_x(x: number): number {
   if (x < 6.0) return 2.0 * x * erfcx(x) - TWO_OVER_SQRT_PI;

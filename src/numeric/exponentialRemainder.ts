@@ -1,6 +1,12 @@
 /**
  * exp(x) − 1 − x, to full relative accuracy; cancels to nothing near zero when written out.
  * Below 0.5 in magnitude the Taylor polynomial to x¹⁶, which reaches the last place; direct above.
+ * @example
+ * ```ts
+ * import { exponentialRemainder } from 'leadline/numeric';
+ * console.log(exponentialRemainder(0.001).toPrecision(6));
+ * // 5.00167e-7
+ * ```
  */
 export function exponentialRemainder(x: number): number {
   if (Math.abs(x) > 0.5) return Math.expm1(x) - x;

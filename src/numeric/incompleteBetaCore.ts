@@ -42,6 +42,14 @@ let complement: boolean = false;
  * Robison-Cox (1998) do.
  */
 export function incompleteBeta(a: number, b: number, x: number, y: number, logX: number, logY: number): void {
+  if (!(Math.min(a, b) > 0.0 && Math.max(a, b) < Infinity)) {
+    betaLogShare = NaN;
+    betaLogScale = NaN;
+    betaTail = NaN;
+    betaSlopeA = NaN;
+    betaSlopeB = NaN;
+    return;
+  }
   const lambda = balance(a, b, x, y);
   betaLogScale = logBetaScale(a, b, logX, logY, lambda);
   const least = Math.min(a, b);

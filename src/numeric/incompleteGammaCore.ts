@@ -39,6 +39,13 @@ export function logGammaScale(a: number, x: number): number {
  * "Algorithm AS 187".
  */
 export function incompleteGamma(a: number, x: number, withSlope: boolean): void {
+  if (!(a > 0.0 && a < Infinity)) {
+    gammaLogShare = NaN;
+    gammaTail = NaN;
+    gammaLogScale = NaN;
+    gammaSlope = NaN;
+    return;
+  }
   if (a >= 60.0 && Math.abs(x - a) <= 0.3 * a) {
     incompleteGammaNear(a, (x - a) / a);
     return;

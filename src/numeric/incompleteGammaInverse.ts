@@ -1,4 +1,5 @@
 import { LN2 } from './constants.js';
+import { digamma } from './digamma.js';
 import {
   gammaLogScale,
   gammaLogShare,
@@ -41,6 +42,7 @@ function pointAt(a: number, w: number): number {
  * a normal variable for a ≥ 1, and the bound Q ≤ e^−x / Γ(a) from the right for a < 1.
  */
 function quantile(a: number, logP: number, logQ: number): number {
+  if (!(a > 0.0 && a < Infinity)) return NaN;
   const base = a < LARGE ? 0.0 : Math.log(a);
   const left = (logP + logGamma1p(a)) / a - base;
   // Below this P = x^a / Γ(a + 1) to double precision, and x may lie beyond the doubles.
@@ -88,29 +90,81 @@ function shapeDerivative(a: number, w: number): number {
   return (-x / a) * gammaSlope;
 }
 
-/** The x with P(a, x) = p. */
+/**
+ * The x with P(a, x) = p. @kernel
+ * @example
+ * ```ts
+ * import { gammaPInverse } from 'leadline/numeric';
+ * console.log(gammaPInverse(2.5, 0.1).toPrecision(6));
+ * // 0.805154
+ * ```
+ */
 export function gammaPInverse(a: number, p: number): number {
   if (!(p > 0.0 && p < 1.0)) return p === 0.0 ? 0.0 : p === 1.0 ? Infinity : NaN;
   return pointAt(a, quantile(a, Math.log(p), Math.log1p(-p)));
 }
+/**
+ * The partial derivative of `gammaPInverse` in `p`.
+ * @example
+ * ```ts
+ * import { gammaPInverse_p } from 'leadline/numeric';
+ * console.log(gammaPInverse_p(2.5, 0.1).toPrecision(6));
+ * // 4.11615
+ * ```
+ */
 export function gammaPInverse_p(a: number, p: number): number {
   if (!(p > 0.0 && p < 1.0)) return p === 0.0 ? zeroSlope(a) : p === 1.0 ? Infinity : NaN;
   return inverseDensity(a, quantile(a, Math.log(p), Math.log1p(-p)));
 }
+/**
+ * The partial derivative of `gammaPInverse` in `a`.
+ * @example
+ * ```ts
+ * import { gammaPInverse_a } from 'leadline/numeric';
+ * console.log(gammaPInverse_a(2.5, 0.1).toPrecision(6));
+ * // 0.572753
+ * ```
+ */
 export function gammaPInverse_a(a: number, p: number): number {
   if (!(p > 0.0 && p < 1.0)) return p === 0.0 ? 0.0 : p === 1.0 ? Infinity : NaN;
   return shapeDerivative(a, quantile(a, Math.log(p), Math.log1p(-p)));
 }
 
-/** The x with Q(a, x) = q. */
+/**
+ * The x with Q(a, x) = q. @kernel
+ * @example
+ * ```ts
+ * import { gammaQInverse } from 'leadline/numeric';
+ * console.log(gammaQInverse(2.5, 1e-20).toPrecision(6));
+ * // 51.7145
+ * ```
+ */
 export function gammaQInverse(a: number, q: number): number {
   if (!(q > 0.0 && q < 1.0)) return q === 0.0 ? Infinity : q === 1.0 ? 0.0 : NaN;
   return pointAt(a, quantile(a, Math.log1p(-q), Math.log(q)));
 }
+/**
+ * The partial derivative of `gammaQInverse` in `q`.
+ * @example
+ * ```ts
+ * import { gammaQInverse_q } from 'leadline/numeric';
+ * console.log(gammaQInverse_q(2.5, 1e-20).toPrecision(6));
+ * // -1.02928e+20
+ * ```
+ */
 export function gammaQInverse_q(a: number, q: number): number {
   if (!(q > 0.0 && q < 1.0)) return q === 0.0 ? -Infinity : q === 1.0 ? -zeroSlope(a) : NaN;
   return -inverseDensity(a, quantile(a, Math.log1p(-q), Math.log(q)));
 }
+/**
+ * The partial derivative of `gammaQInverse` in `a`.
+ * @example
+ * ```ts
+ * import { gammaQInverse_a } from 'leadline/numeric';
+ * console.log(gammaQInverse_a(2.5, 1e-20).toPrecision(6));
+ * // 3.35762
+ * ```
+ */
 export function gammaQInverse_a(a: number, q: number): number {
   if (!(q > 0.0 && q < 1.0)) return q === 0.0 ? Infinity : q === 1.0 ? 0.0 : NaN;
   return shapeDerivative(a, quantile(a, Math.log1p(-q), Math.log(q)));
@@ -121,10 +175,51 @@ function zeroSlope(a: number): number {
   return a < 1.0 ? 0.0 : a === 1.0 ? 1.0 : Infinity;
 }
 
-/** log x with log P(a, x) = logP: right also where x or P underflows. */
+/**
+ * log x with log P(a, x) = logP: right also where x or P underflows. @kernel
+ * @example
+ * ```ts
+ * import { logGammaPInverse } from 'leadline/numeric';
+ * console.log(logGammaPInverse(0.001, -5).toPrecision(6));
+ * // -5000.58
+ * ```
+ */
 export function logGammaPInverse(a: number, logP: number): number {
   if (!(logP < 0.0)) return logP === 0.0 ? Infinity : NaN;
   if (logP === -Infinity) return -Infinity;
   const w = quantile(a, logP, log1mexp(logP));
   return a < LARGE ? w : w + Math.log(a);
+}
+/**
+ * The partial derivative of `logGammaPInverse` in `a`.
+ * @example
+ * ```ts
+ * import { logGammaPInverse_a } from 'leadline/numeric';
+ * console.log(logGammaPInverse_a(0.001, -5).toPrecision(6));
+ * // 5.00000e+6
+ * ```
+ */
+export function logGammaPInverse_a(a: number, logP: number): number {
+  if (!(logP < 0.0)) return logP === 0.0 ? 0.0 : NaN;
+  if (logP === -Infinity) return Infinity;
+  const w = quantile(a, logP, log1mexp(logP));
+  if (a < LARGE && w < -40.0) return (digamma(a + 1.0) - w) / a;
+  evaluateAt(a, w, true);
+  return -gammaSlope / a;
+}
+/**
+ * P / (x p(x)).
+ * @example
+ * ```ts
+ * import { logGammaPInverse_logP } from 'leadline/numeric';
+ * console.log(logGammaPInverse_logP(0.001, -5).toPrecision(6));
+ * // 1000.00
+ * ```
+ */
+export function logGammaPInverse_logP(a: number, logP: number): number {
+  if (!(logP < 0.0)) return logP === 0.0 ? Infinity : NaN;
+  const w = logP === -Infinity ? logP : quantile(a, logP, log1mexp(logP));
+  if (a < LARGE && w < -40.0) return 1.0 / a;
+  evaluateAt(a, w, false);
+  return (gammaSide === 0.0 ? gammaTail : Math.exp(logP - gammaLogScale)) / a;
 }

@@ -4,7 +4,13 @@
  * With r = x / (2 + x), log(1 + x) = 2 atanh r, and 2r − x = −x r exactly, so that
  * log(1 + x) − x = r (2 r² (1/3 + r²/5 + r⁴/7 + …) − x). The series is used where the direct difference would
  * lose more than two bits; fifteen terms reach 1e-16 at its edges (|r| ≤ 0.23).
- * Source: DLMF 4.6.4 and the definition of atanh.
+ * Source: DLMF 4.6.4 and the definition of atanh. @kernel
+ * @example
+ * ```ts
+ * import { log1pmx } from 'leadline/numeric';
+ * console.log(log1pmx(0.001).toPrecision(6));
+ * // -4.99667e-7
+ * ```
  */
 export function log1pmx(x: number): number {
   if (x < -0.37 || x > 0.6) {
@@ -35,7 +41,15 @@ export function atanhTail(s: number): number {
   return s * p;
 }
 
-/** d/dx (log(1 + x) − x) = −x / (1 + x). */
+/**
+ * d/dx (log(1 + x) − x) = −x / (1 + x).
+ * @example
+ * ```ts
+ * import { log1pmx_x } from 'leadline/numeric';
+ * console.log(log1pmx_x(0.001).toPrecision(6));
+ * // -0.000999001
+ * ```
+ */
 export function log1pmx_x(x: number): number {
   if (x === Infinity) return -1.0;
   return -x / (1.0 + x);

@@ -35,11 +35,31 @@ export function logGammaNear2(t: number): number {
   return t * p;
 }
 
-/** log Γ(1 + x), which keeps the relative accuracy of a small x; x > −1. */
+/**
+ * log Γ(1 + x), which keeps the relative accuracy of a small x; x > −1. @kernel
+ * @example
+ * ```ts
+ * import { logGamma1p } from 'leadline/numeric';
+ * console.log(logGamma1p(1e-6).toPrecision(6));
+ * // -5.77215e-7
+ * ```
+ */
 export function logGamma1p(x: number): number {
   // log Γ(1 + x) = log Γ(2 + x) − log(1 + x).
   if (Math.abs(x) <= 0.5) return logGammaNear2(x) - Math.log1p(x);
   return logGamma(1.0 + x);
+}
+/**
+ * The partial derivative of `logGamma1p` in `x`.
+ * @example
+ * ```ts
+ * import { logGamma1p_x } from 'leadline/numeric';
+ * console.log(logGamma1p_x(1e-6).toPrecision(6));
+ * // -0.577214
+ * ```
+ */
+export function logGamma1p_x(x: number): number {
+  return digamma(1.0 + x);
 }
 
 /**
@@ -49,6 +69,12 @@ export function logGamma1p(x: number): number {
  * zero at 1 keeps its relative accuracy; up to 10 the recurrence downward (one logarithm of a product of
  * factors above 1, nothing cancels); above, Stirling's formula, whose terms no longer cancel there. For x < 0
  * the reflection log(π / |sin πx|) − log Γ(1 − x). Source: DLMF 5.5.1, 5.5.3, 5.7.3, 5.11.1. @kernel
+ * @example
+ * ```ts
+ * import { logGamma } from 'leadline/numeric';
+ * console.log(logGamma(2.5).toPrecision(6));
+ * // 0.284683
+ * ```
  */
 export function logGamma(x: number): number {
   if (x >= 10.0) {
@@ -72,6 +98,15 @@ export function logGamma(x: number): number {
   if (away === 0.0) return Infinity;
   return LOG_PI - Math.log(Math.sin(PI * away)) - logGamma(1.0 - x);
 }
+/**
+ * The partial derivative of `logGamma` in `x`.
+ * @example
+ * ```ts
+ * import { logGamma_x } from 'leadline/numeric';
+ * console.log(logGamma_x(2.5).toPrecision(6));
+ * // 0.703157
+ * ```
+ */
 export function logGamma_x(x: number): number {
   return digamma(x);
 }

@@ -1,3 +1,5 @@
+import { digamma } from './digamma.js';
+import { digammaDifference } from './digammaDifference.js';
 import { log1pmx } from './log1pmx.js';
 
 /**
@@ -6,6 +8,12 @@ import { log1pmx } from './log1pmx.js';
  *
  * Below b = 8 the recurrence moves both up at the cost of log1p(a/b) a step; above, Stirling's formulas are
  * subtracted term by term, which leaves a factor a in every term. DLMF 5.5.1, 5.11.1.
+ * @example
+ * ```ts
+ * import { logGammaDifference } from 'leadline/numeric';
+ * console.log(logGammaDifference(3, 1e-8).toPrecision(6));
+ * // 9.22784e-9
+ * ```
  */
 export function logGammaDifference(b: number, a: number): number {
   let sum = 0.0;
@@ -36,4 +44,28 @@ export function logGammaDifference(b: number, a: number): number {
   p = 1.0 / 12.0 + u * p;
   const h = a * r;
   return x * log1pmx(h) - 0.5 * Math.log1p(h) + a * Math.log(x + a) - h * s * (p + s * (r + s) * q) - sum;
+}
+/**
+ * The partial derivative of `logGammaDifference` in `b`.
+ * @example
+ * ```ts
+ * import { logGammaDifference_b } from 'leadline/numeric';
+ * console.log(logGammaDifference_b(3, 1e-8).toPrecision(6));
+ * // 3.94934e-9
+ * ```
+ */
+export function logGammaDifference_b(b: number, a: number): number {
+  return digammaDifference(b, a);
+}
+/**
+ * The partial derivative of `logGammaDifference` in `a`.
+ * @example
+ * ```ts
+ * import { logGammaDifference_a } from 'leadline/numeric';
+ * console.log(logGammaDifference_a(3, 1e-8).toPrecision(6));
+ * // 0.922784
+ * ```
+ */
+export function logGammaDifference_a(b: number, a: number): number {
+  return digamma(b + a);
 }

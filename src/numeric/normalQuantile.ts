@@ -44,6 +44,12 @@ function lowerTailQuantile(l: number): number {
  * Φ⁻¹(p), the standard normal quantile; ∓Infinity at 0 and 1, NaN outside [0, 1]. The upper tail is as good as
  * the double p allows: for a tail beyond 1 − 1e-8 give the logarithm of the complement to
  * `normalQuantileFromLog` and change the sign. @kernel
+ * @example
+ * ```ts
+ * import { normalQuantile } from 'leadline/numeric';
+ * console.log(normalQuantile(0.01).toPrecision(6));
+ * // -2.32635
+ * ```
  */
 export function normalQuantile(x: number): number {
   if (x > 0.2 && x < 0.8) return centralQuantile(2.0 * x - 1.0);
@@ -52,6 +58,15 @@ export function normalQuantile(x: number): number {
   if (x < 0.5) return lowerTailQuantile(Math.log(x));
   return -lowerTailQuantile(Math.log1p(-x));
 }
+/**
+ * The partial derivative of `normalQuantile` in `x`.
+ * @example
+ * ```ts
+ * import { normalQuantile_x } from 'leadline/numeric';
+ * console.log(normalQuantile_x(0.01).toPrecision(6));
+ * // 37.5204
+ * ```
+ */
 export function normalQuantile_x(x: number): number {
   return 1.0 / normalDensity(normalQuantile(x));
 }
@@ -59,6 +74,12 @@ export function normalQuantile_x(x: number): number {
 /**
  * The x with log Φ(x) = l, from the logarithm of the probability (here named x as every kernel's argument):
  * both tails, l → −Infinity and l → 0, keep their relative accuracy. NaN for l > 0. @kernel
+ * @example
+ * ```ts
+ * import { normalQuantileFromLog } from 'leadline/numeric';
+ * console.log(normalQuantileFromLog(-1000).toPrecision(6));
+ * // -44.6157
+ * ```
  */
 export function normalQuantileFromLog(x: number): number {
   if (x < -1.6) return x === -Infinity ? x : lowerTailQuantile(x);
@@ -72,7 +93,15 @@ function centralFromLog(l: number): number {
   return Math.expm1(l + LN2 + LN2_LOW);
 }
 
-/** Φ/φ at the quantile: √(π/2) erfcx(−x/√2). */
+/**
+ * Φ/φ at the quantile: √(π/2) erfcx(−x/√2).
+ * @example
+ * ```ts
+ * import { normalQuantileFromLog_x } from 'leadline/numeric';
+ * console.log(normalQuantileFromLog_x(-1000).toPrecision(6));
+ * // 0.0224024
+ * ```
+ */
 export function normalQuantileFromLog_x(x: number): number {
   return SQRT_HALF_PI * erfcx(-normalQuantileFromLog(x) * SQRT_HALF);
 }

@@ -5,6 +5,12 @@ import { PI } from './constants.js';
  *
  * Up to 8 the recurrence ψ′(x) = 1/x² + ψ′(x + 1), a sum of positive terms; above, the asymptotic series. For
  * x < 0 the reflection (π / sin πx)² − ψ′(1 − x). Source: DLMF 5.15.5, 5.15.6, 5.15.8. @kernel
+ * @example
+ * ```ts
+ * import { trigamma } from 'leadline/numeric';
+ * console.log(trigamma(2.5).toPrecision(6));
+ * // 0.490358
+ * ```
  */
 export function trigamma(x: number): number {
   if (x < 0.0) {
@@ -21,6 +27,15 @@ export function trigamma(x: number): number {
   const r = 1.0 / y;
   return sum + r + 0.5 * r * r + trigammaSeries(y);
 }
+/**
+ * The partial derivative of `trigamma` in `x`.
+ * @example
+ * ```ts
+ * import { trigamma_x } from 'leadline/numeric';
+ * console.log(trigamma_x(2.5).toPrecision(6));
+ * // -0.236204
+ * ```
+ */
 export function trigamma_x(x: number): number {
   return tetragamma(x);
 }
@@ -44,6 +59,12 @@ export function trigammaSeries(x: number): number {
  * ψ″(x) for x > 0, the tetragamma function (negative); by the recurrence ψ″(x) = −2/x³ + ψ″(x + 1) up to 10 and
  * the derivative of the trigamma function's asymptotic series above. For x < 0 the reflection
  * ψ″(1 − x) − 2π³ cos(πx) / sin³(πx). Source: DLMF 5.15.5, 5.15.6, 5.15.9.
+ * @example
+ * ```ts
+ * import { tetragamma } from 'leadline/numeric';
+ * console.log(tetragamma(2.5).toPrecision(6));
+ * // -0.236204
+ * ```
  */
 export function tetragamma(x: number): number {
   if (x < 0.0) {

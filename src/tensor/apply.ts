@@ -2,10 +2,11 @@ import * as tf from '@tensorflow/tfjs';
 import { GradientError } from '../errors.js';
 import { type ArrayOperand, evaluateCompiled, type Upstream } from '../kernels/evaluate.js';
 import { broadcastShapes, broadcastStrides, sameShape, sizeOf } from '../kernels/layout.js';
-import { usesComposedForm } from './composed.js';
+import { insideComposed, usesComposedForm } from './composed.js';
 import { copiesOnWrite } from './engine.js';
 import { evaluateScalar } from './evaluateScalar.js';
 import type { Formula } from './formula.js';
+import { isRefusal } from './noComposedForm.js';
 import { composedTensor, type Operand } from './operand.js';
 import { runOperandOperation } from './operandOperation.js';
 
@@ -32,7 +33,10 @@ export function applyFormula(
   const shape = broadcastShapes(where, spread.shape ? [...shapes, spread.shape] : shapes);
   const fold = spread.fold ?? 0;
   const hasKernel = formula.compiled !== undefined || formula.value !== undefined;
-  return (usesComposedForm() && !formula.kernelAlone) || !hasKernel
+  // On an accelerator a kernel costs a read-back, which is better than no value where there is no other form.
+  const byTensors = usesComposedForm() && !formula.kernelAlone;
+  const kernelOnly = hasKernel && !insideComposed() && isRefusal(formula.composed);
+  return (byTensors && !kernelOnly) || !hasKernel
     ? applyComposed(formula, operands, shape, fold)
     : applyKernel(where, formula, operands, shape, fold);
 }

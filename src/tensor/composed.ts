@@ -42,6 +42,11 @@ export function composed<T>(compute: () => T): T {
   }
 }
 
+/** Whether this runs inside `composed`. */
+export function insideComposed(): boolean {
+  return depth > 0;
+}
+
 /** Whether formulas are to be evaluated from tensor operations now. */
 export function usesComposedForm(): boolean {
   return depth > 0 || onAccelerator();

@@ -3,6 +3,7 @@ import { GradientError, ParameterError } from '../errors.js';
 import { applyFormula } from './apply.js';
 import { describe, type ParameterValue } from './checks.js';
 import type { Formula } from './formula.js';
+import { refusal } from './noComposedForm.js';
 import { operandFrom } from './operand.js';
 
 type Scalar = (...values: number[]) => number;
@@ -60,12 +61,13 @@ export function lift(formula: ScalarFormula): (...values: ParameterValue[]) => t
     parameters: partials.map((_, k) => `argument ${k}`),
     value,
     partials,
-    composed: (...values) => {
-      if (composed) return composed(...values);
-      throw new GradientError(
-        `${name}: the formula must have a composed form here; got none; give lift a composed function over tensors`,
-      );
-    },
+    composed: composed
+      ? (...values) => composed(...values)
+      : refusal(() => {
+          throw new GradientError(
+            `${name}: the formula must have a composed form here; got none; give lift a composed function over tensors`,
+          );
+        }),
   };
   return (...values) => {
     if (values.length !== partials.length) {

@@ -3,7 +3,7 @@ import { describe, expect, it } from 'vitest';
 import { createProgram } from './helpers/program.js';
 import { root } from './helpers/repository.js';
 
-const entries = ['src/index.ts', 'src/conformance/index.ts'];
+const entries = ['src/index.ts', 'src/conformance/index.ts', 'src/numeric/index.ts'];
 const program = createProgram(entries);
 const checker = program.getTypeChecker();
 

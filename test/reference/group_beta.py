@@ -74,6 +74,10 @@ def tables():
         ('logBetaI_a', share(2, 1, 0), points),
         ('logBetaI_b', share(3, 1, 0), points),
         ('logBetaI_x', density(1, 0), points),
+        ('logBetaIComplement', at(1), points),
+        ('logBetaIComplement_a', share(2, -1, 1), points),
+        ('logBetaIComplement_b', share(3, -1, 1), points),
+        ('logBetaIComplement_x', density(-1, 1), points),
         ('betaDrawDerivativeA', draw(2), front),
         ('betaDrawDerivativeB', draw(3), front),
     ]}

@@ -29,11 +29,11 @@ def tables():
         s = log_odds_quantile(a, b, p)
         return 1 / (1 + exp(-s)), 1 / (1 + exp(s))
 
-    def slope(index):
+    def slope(index, sign=1):
         def formula(a, b, p):
             x, y = ends(a, b, p)
             values = incomplete_beta(a, b, x, y)
-            return x * y * exp(-values[4]) * (1 if index is None else -values[index])
+            return sign * x * y * exp(-values[4]) * (1 if index is None else -values[index])
         return formula
 
     return {name: (formula, points, 50) for name, formula in {
@@ -42,4 +42,7 @@ def tables():
         'betaIInverse_a': slope(2),
         'betaIInverse_b': slope(3),
         'betaIInverse_p': slope(None),
+        'betaIInverseComplement_a': slope(2, -1),
+        'betaIInverseComplement_b': slope(3, -1),
+        'betaIInverseComplement_p': slope(None, -1),
     }.items()}

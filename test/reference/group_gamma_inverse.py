@@ -1,5 +1,5 @@
 """Quantiles of the gamma law, and their derivatives."""
-from mpmath import exp, log, log1p, mp
+from mpmath import digamma, exp, log, log1p, mp
 
 from incomplete_gamma import draw_derivative, incomplete_gamma, log_quantile
 from machinery import Draws, f32, fence
@@ -32,6 +32,15 @@ def tables():
     def log_p_quantile(a, l):
         return log_quantile(a, l, log(1 - exp(l)))
 
+    # So far down P is x^a / Gamma(a + 1) to all digits.
+    def log_in_shape(a, l):
+        w = log_p_quantile(a, l)
+        return (digamma(a + 1) - w) / a if w < -1000 else draw_derivative(exp(w), a) / exp(w)
+
+    def log_in_share(a, l):
+        w = log_p_quantile(a, l)
+        return 1 / a if w < -1000 else exp(l - incomplete_gamma(a, exp(w))[3]) / a
+
     logs = [(shape(d), -d.log_uniform(1e-30, 1e4)) for d in [Draws('log gamma quantile')] for _ in range(220)]
     logs += [(a, l) for a in (60.0, 300.0) for l in (-1e3, -2400.0, -2.5e4)]
     logs += [(a, l) for a in (1e-3, 0.5, 3.0, 1e3) for l in fence(-log(2), -1e-10, -1e4, steps=(0, 1, 8))]
@@ -43,4 +52,6 @@ def tables():
         'gammaQInverse_q': (lambda a, q: -slope(a, q_point(a, q)), shares, 60),
         'gammaQInverse_a': (lambda a, q: draw_derivative(q_point(a, q), a), shares, 60),
         'logGammaPInverse': (log_p_quantile, logs, 80),
+        'logGammaPInverse_a': (log_in_shape, logs, 80),
+        'logGammaPInverse_logP': (log_in_share, logs, 80),
     }

@@ -26,6 +26,8 @@ def tables():
     add('deviance_x', lambda x, m: log(x / m), near, corners, switches, ties)
     add('deviance_m', lambda x, m: 1 - x / m, near, corners, switches, ties)
     add('logRatio', lambda x, m: log(x / m), near, corners, switches, ties)
+    add('logRatio_x', lambda x, m: 1 / x, near, corners, switches, ties)
+    add('logRatio_m', lambda x, m: -1 / m, near, corners, switches, ties)
 
     def any_pair(d):
         return d.positive(), d.positive()
@@ -45,6 +47,7 @@ def tables():
     add('logBeta_b', lambda a, b: digamma(b) - digamma(a + b), mixed, corners, tens, halves)
     eights = [(a, b) for a in fence(7, 8, 9, steps=(0, 1)) for b in (1e-30, 1e-3, 0.7, 7.5, 300.0, 1e30)]
     add('digammaDifference', lambda a, b: digamma(a + b) - digamma(a), mixed, corners, tens, eights)
+    add('digammaDifference_a', lambda a, b: polygamma(1, a + b) - polygamma(1, a), mixed, corners, tens, eights)
     add('digammaDifference_b', lambda a, b: polygamma(1, a + b), mixed, corners, tens, eights)
 
     def small_step(d):
@@ -52,4 +55,6 @@ def tables():
 
     eights = [(b, a) for b in fence(1.4616, 7, 8, steps=(0, 1, 8)) for a in (1e-30, 1e-3, 0.7, 1.0)]
     add('logGammaDifference', lambda b, a: loggamma(b + a) - loggamma(b), small_step, eights)
+    add('logGammaDifference_b', lambda b, a: digamma(b + a) - digamma(b), small_step, eights)
+    add('logGammaDifference_a', lambda b, a: digamma(b + a), small_step, eights)
     return tables

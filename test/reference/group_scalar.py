@@ -73,6 +73,8 @@ def tables():
     add('log1pmx_x', lambda x: -x / (1 + x), lambda d: d.positive() if d.random.random() < 0.5 else d.uniform(-1, 1),
         TINY, HUGE, fence(-0.37, 0.6, 1, -0.999))
 
+    add('exponentialRemainder', lambda x: expm1(x) - x, moderate, both, bends, digits=250)
+
     # A tenth of the points at negative arguments, where only the absolute error is small near the zeros.
     def gamma_domain(d):
         return d.uniform(-12, 0) if d.random.random() < 0.1 else d.positive()
@@ -81,13 +83,17 @@ def tables():
     add('logGamma', log_gamma, gamma_domain, TINY, HUGE, roots)
     add('logGamma_x', digamma, gamma_domain, TINY, HUGE, roots)
     add('logGamma1p', lambda x: log_gamma(1 + x), lambda d: d.positive(), TINY, fence(0.5, -0.5, 1, 1.5, 9))
+    add('logGamma1p_x', lambda x: digamma(1 + x), lambda d: d.positive(), TINY, fence(0.5, -0.5, 1, 1.5, 9))
     poles = fence(0.5, 1, 1.5, 2.5, 6, 1.44, 1.48, 1.4616321449683622)
     add('digamma', digamma, gamma_domain, TINY, HUGE, poles)
     add('digamma_x', lambda x: polygamma(1, x), gamma_domain, TINY, HUGE, poles)
     add('digammaMinusLog', lambda x: digamma(x) - log(x), lambda d: d.positive(), TINY, HUGE, poles)
+    add('digammaMinusLog_x', lambda x: polygamma(1, x) - 1 / x, lambda d: d.positive(), TINY, HUGE, poles,
+        fence(7, 8))
     steps = fence(0.5, 1, 2, 7, 8, 9, 10)
     add('trigamma', lambda x: polygamma(1, x), gamma_domain, TINY, HUGE, steps)
     add('trigamma_x', lambda x: polygamma(2, x), gamma_domain, TINY, HUGE, steps)
+    add('tetragamma', lambda x: polygamma(2, x), gamma_domain, TINY, HUGE, steps)
     orders = fence(0.5, 1, 1.5, 5, 6, 15)
     add('stirlingError', lambda n: log_gamma(n + 1) - (n + mpf(1) / 2) * log(n) + n - log(2 * pi) / 2,
         lambda d: d.positive(), TINY, HUGE, orders)
@@ -112,6 +118,7 @@ def tables():
     add('logNormalCdf', log_phi, bell, edge, sides)
     add('logNormalCdf_x', mills, bell, edge, sides)
     add('logNormalCdfDerivative', mills, bell, edge, sides)
+    add('logNormalCdfDerivative_x', lambda x: -mills(x) * (x + mills(x)), bell, edge, sides, fence(-4), digits=250)
 
     shares = fence(0.075, 0.1353, 0.2, 0.8, 0.8647, 0.925) + fence(0.5) + [1 - 2.0 ** -24, 1.401298464324817e-45]
 
