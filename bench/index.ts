@@ -3,6 +3,7 @@
 import * as tf from '@tensorflow/tfjs';
 import '@tensorflow/tfjs-backend-wasm';
 import { density } from './density.js';
+import { familyCosts } from './families.js';
 import { randomDraws } from './random.js';
 import { writeReport } from './report.js';
 import { type Row, rowText } from './row.js';
@@ -13,6 +14,7 @@ const sections: readonly { name: string; backends: readonly string[]; run: () =>
   { name: 'steps', backends: ['wasm', 'cpu'], run: steps },
   { name: 'draws', backends: ['wasm'], run: drawGrowth },
   { name: 'density', backends: ['wasm', 'cpu'], run: density },
+  { name: 'families', backends: ['wasm'], run: familyCosts },
   { name: 'random', backends: ['wasm'], run: randomDraws },
 ];
 

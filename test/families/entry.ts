@@ -40,7 +40,9 @@ export interface FamilyEntry {
   readonly resting?: Readonly<Record<string, number>>;
 }
 
-const files = readdirSync(import.meta.dirname).filter((name) => name.endsWith('.ts') && !['entry.ts', 'parameters.ts'].includes(name));
+const files = readdirSync(import.meta.dirname).filter(
+  (name) => name.endsWith('.ts') && !['entry.ts', 'parameters.ts'].includes(name),
+);
 
 /** The families that have a file of their own here, by name. */
 export const entries: Readonly<Record<string, FamilyEntry>> = Object.fromEntries(
