@@ -50,7 +50,14 @@ const probabilities = Float32Array.of(1e-20, 1e-4, 0.01, 0.1, 0.25, 0.5, 0.75, 0
 /** The upper quantile inverts the survival function, small probabilities included. */
 export function upperQuantileInverts(subject: Subject): void {
   const x = at(subject, 'upperQuantile', probabilities);
-  const density = logDensityAt(subject.d, x).map(Math.exp);
+  // At an end the density may be zero, but not beside it, where the point was before it was rounded.
+  const around = [1 - 2 ** -22, 1, 1 + 2 ** -22].map((step) =>
+    logDensityAt(
+      subject.d,
+      x.map((v) => v * step),
+    ).map(Math.exp),
+  );
+  const density = x.map((_, k) => Math.max(...around.map((values) => values[k]!)));
   const back = at(subject, 'survival', x);
   probabilities.forEach((p, k) => {
     const effect = Math.abs(x[k]! * density[k]!);
