@@ -10,5 +10,7 @@ export const familyNames: readonly string[] = [
   'multivariateNormal',
   'normal',
   'poisson',
+  'reciprocal',
+  'triangular',
   'uniform',
 ];

@@ -1,6 +1,7 @@
 import type { Distribution } from '../distributions/distribution.js';
 import { registerCategoricalKl } from './categoricalKl.js';
 import { registerMultivariateNormalKl } from './multivariateNormalKl.js';
+import { registerReciprocalKl } from './own/reciprocalKl.js';
 import { findKl, type KlFormula } from './registry.js';
 import { registerScalarKl } from './scalarKl.js';
 
@@ -11,6 +12,7 @@ export function ensureClosedForms(): void {
   if (ready) return;
   ready = true;
   registerScalarKl();
+  registerReciprocalKl();
   registerCategoricalKl();
   registerMultivariateNormalKl();
 }

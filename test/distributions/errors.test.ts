@@ -14,6 +14,7 @@ import {
   uniform,
 } from '../../src/index.js';
 import { factoriesOf } from '../conformance/factories.js';
+import { entries } from '../families/entry.js';
 import { call, has, type Sample, scalars, vectors } from './samples.js';
 
 beforeAll(async () => {
@@ -47,7 +48,8 @@ it('every family that the library exports is probed here', () => {
 
 /** What each parameter must be, by name: the words of its domain, a value outside it and the cure. */
 const lookForIt = 'look for the division or logarithm that made it';
-const domains: Record<string, { words: string; outside?: number; fix: string; example?: string }> = {
+type Domain = { words: string; outside?: number; fix: string; example?: string };
+const domains: Record<string, Domain> = {
   mean: { words: 'finite', fix: '' },
   location: { words: 'finite', fix: '' },
   lower: { words: 'finite', fix: '' },
@@ -86,7 +88,7 @@ const domains: Record<string, { words: string; outside?: number; fix: string; ex
 const runaway = 'a network that gives such values has diverged: clip its output, or lower the learning rate';
 
 function domainOf(family: string, name: string) {
-  const domain = domains[name]!;
+  const domain: Domain = entries[family]?.domains?.[name] ?? domains[name]!;
   const rate = 'pass logRate if your network can produce negative values';
   // The mean and scale of these families are their rate by another name.
   if (family === 'exponential' && name === 'scale') return { words: 'positive', outside: 0, fix: rate };

@@ -38,6 +38,8 @@ export interface FamilyEntry {
   readonly kernelOnly?: readonly string[];
   /** What a parameter is when a function does not depend on it. */
   readonly resting?: Readonly<Record<string, number>>;
+  /** What a parameter's errors ask for, a number that they refuse and the cure, where its name alone does not say. */
+  readonly domains?: Readonly<Record<string, { words: string; outside?: number; fix: string }>>;
 }
 
 const files = readdirSync(import.meta.dirname).filter(

@@ -28,8 +28,12 @@ def _thin(z, a, digits):
 
 
 def owen(h, a):
-    """In the angle, on stretches of its scale."""
-    return _owen(abs(h), abs(a), mp.dps) * (-1 if a < 0 else 1)
+    """In the angle, on stretches of its scale; beyond a = 1 by the complementary angle (Owen 1956, equation 2.3)."""
+    h, sign, a = abs(h), -1 if a < 0 else 1, abs(a)
+    if a <= 1:
+        return sign * _owen(h, a, mp.dps)
+    first, second = erfc(h / sqrt(2)) / 2, erfc(a * h / sqrt(2)) / 2
+    return sign * ((first + second) / 2 - first * second - _owen(a * h, 1 / a, mp.dps))
 
 
 @lru_cache(maxsize=None)

@@ -41,7 +41,8 @@ def load(family):
 
 def digits(family, function):
     """Two precisions. The families without a file of their own are so cheap that theirs are high for every function."""
-    low = DIGITS[family].get(function, DIGITS[family].get('', 60)) if family in DIGITS else 420
+    tail = function in ('survival', 'logCdf', 'logSurvival', 'upperQuantile')
+    low = DIGITS[family].get(function, DIGITS[family].get('', 60)) if family in DIGITS else 150 if tail else 420
     return low, low + (40 if family in DIGITS else 80)
 
 
