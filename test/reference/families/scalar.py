@@ -214,7 +214,7 @@ def log_phi(z):
         r = 1 / square(z)
         series = 1 - r * (1 - 3 * r * (1 - 5 * r * (1 - 7 * r * (1 - 9 * r))))
         return -square(z) / 2 - log(-z) + constant(-log_2pi() / 2, z) + log(series)
-    if z.value > 40:
+    if z.value > 5:
         tail = phi(-z)
         return log1p(-tail)
     return log(phi(z))
