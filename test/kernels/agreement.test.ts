@@ -2,6 +2,7 @@ import { describe, expect, it } from 'vitest';
 import { evaluateCompiled } from '../../src/kernels/evaluate.js';
 import { catalogue } from '../../src/kernels/generated/catalogue.js';
 import { formulas } from '../../src/kernels/generated/formulas.js';
+import { ulp32 } from '../numeric/ulp.js';
 
 type Scalar = (...values: number[]) => number;
 
@@ -105,9 +106,26 @@ function nearBoundary(value: number): boolean {
   return Math.fround(value - room) < Math.fround(value + room);
 }
 
-const count = 2000;
+/**
+ * Whether the last bits of the arguments move the double further than it lies from what was got: no formula can tell
+ * there which last bits the functions it is made of should have.
+ */
+function amplified(f: Scalar, args: readonly number[], double: number, got: number): boolean {
+  const moved = args.map((v, k) =>
+    Math.abs(f(...args.map((w, j) => (j === k ? v * (1 + 2 ** -50) : w))) - double),
+  );
+  return Math.abs(got - double) <= 4 * Math.max(...moved) + 0.5 * ulp32(double);
+}
+
+/** A seed of a formula's own, so that another formula beside it changes nothing. */
+function seedOf(title: string): number {
+  return [...title].reduce((hash, letter) => (Math.imul(hash, 31) + letter.charCodeAt(0)) | 0, 77) || 77;
+}
+
+const count = 1000;
 let compared = 0;
 let excused = 0;
+let sensitives = 0;
 
 describe('compiled formulas give what TypeScript gives, to the last bit', () => {
   it('covers every kernel', () => {
@@ -115,13 +133,13 @@ describe('compiled formulas give what TypeScript gives, to the last bit', () => 
     expect(Object.keys(formulas)).toEqual(Object.keys(catalogue));
   });
 
-  for (const [at, { title, index, f, arity }] of cases.entries()) {
+  for (const { title, index, f, arity } of cases) {
     if (!f) {
       it(`${title} is missing in both`, () => expect(index).toBe(-1));
       continue;
     }
     it(title, () => {
-      const columns = points(arity, count, 77 + at);
+      const columns = points(arity, count, seedOf(title));
       const got = evaluateCompiled({
         formula: index,
         operands: columns.map((data) => ({ data, shape: [count], transform: -1 })),
@@ -134,10 +152,11 @@ describe('compiled formulas give what TypeScript gives, to the last bit', () => 
         const double = f(...args);
         compared++;
         if (Object.is(got[i], Math.fround(double))) continue;
-        expect(nearBoundary(double), `(${args.join(', ')}): compiled ${got[i]}, TypeScript ${double}`).toBe(
-          true,
-        );
-        excused++;
+        const what = `(${args.join(', ')}): compiled ${got[i]}, TypeScript ${double}`;
+        const sensitive = amplified(f, args, double, got[i]!);
+        expect(nearBoundary(double) || sensitive, what).toBe(true);
+        if (sensitive) sensitives++;
+        else excused++;
       }
     });
   }
@@ -147,5 +166,7 @@ describe('compiled formulas give what TypeScript gives, to the last bit', () => 
   it('rounding boundaries excuse at most two points', () => {
     expect(compared).toBeGreaterThan(count * 150);
     expect(excused).toBeLessThanOrEqual(2);
+    // Shapes of 1e20 and more, where a last bit is worth many units: one point in fifty thousand.
+    expect(sensitives).toBeLessThanOrEqual(compared / 50_000);
   });
 });
