@@ -55,6 +55,7 @@ export {
   type StandardFormula,
 } from './distributions/locationScaleFamily.js';
 export { type Logistic, type LogisticOptions, logistic } from './distributions/logistic.js';
+export { type LogitNormal, type LogitNormalOptions, logitNormal } from './distributions/logitNormal.js';
 export { type LogNormal, type LogNormalOptions, logNormal } from './distributions/logNormal.js';
 export {
   type MultivariateNormal,

@@ -10,6 +10,7 @@ export const familyNames: readonly string[] = [
   'multivariateNormal',
   'normal',
   'poisson',
+  'logitNormal',
   'reciprocal',
   'triangular',
   'uniform',

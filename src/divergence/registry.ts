@@ -20,6 +20,7 @@ export interface ClosedKlPairs {
   'uniform|uniform': true;
   'exponential|exponential': true;
   'bernoulli|bernoulli': true;
+  'logitNormal|logitNormal': true;
   'reciprocal|reciprocal': true;
   'categorical|categorical': true;
   'poisson|poisson': true;
