@@ -55,7 +55,7 @@ export function cauchySurvival_z(z: number): number {
 export function cauchyLogCdf(x: number, location: number, scale: number): number {
   const d = x - location;
   const z = d / scale;
-  if (z < -1.0e9) return logRatio(scale, -d) - LOG_PI;
+  if (z < -1.0e9) return -logRatio(-d, scale) - LOG_PI;
   return z < 0.0 ? Math.log(cauchyCdf(z)) : Math.log1p(-cauchyCdf(-z));
 }
 export function cauchyLogCdf_x(x: number, location: number, scale: number): number {

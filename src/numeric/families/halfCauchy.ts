@@ -65,12 +65,12 @@ function logSlope(z: number): number {
 export function halfCauchyLogSurvival(x: number, scale: number): number {
   if (x <= 0.0) return 0.0;
   const z = x / scale;
-  if (z > 1.0e9) return logRatio(scale, x) + logTwoOverPi;
+  if (z > 1.0e9) return logTwoOverPi - logRatio(x, scale);
   return z < 1.0 ? Math.log1p(-halfCauchyCdf(z)) : Math.log(halfCauchySurvival(z));
 }
 export function halfCauchyLogSurvival_x(x: number, scale: number): number {
   // Near zero minus the density, also where z underflows.
-  if (x < 1.0e-9 * scale) return x >= 0.0 ? -1.0 / (halfPi * scale) : 0.0;
+  if (x < 1.0e-13 * scale) return x >= 0.0 ? -1.0 / (halfPi * scale) : 0.0;
   return x >= 0.0 ? -logSlope(scale / x) / x : 0.0;
 }
 export function halfCauchyLogSurvival_scale(x: number, scale: number): number {
