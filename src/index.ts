@@ -15,6 +15,7 @@ export type {
 } from './bounds/pairing.js';
 export { type Bernoulli, type BernoulliOptions, bernoulli } from './distributions/bernoulli.js';
 export { type Categorical, type CategoricalOptions, categorical } from './distributions/categorical.js';
+export { type Cauchy, type CauchyOptions, cauchy } from './distributions/cauchy.js';
 export type {
   Distribution,
   HasCdf,
@@ -45,7 +46,10 @@ export type {
   ScalarSupport,
 } from './distributions/familyDefinition.js';
 export type { FamilyFormula, NumberFormula } from './distributions/familyFormula.js';
+export { type Gompertz, type GompertzOptions, gompertz } from './distributions/gompertz.js';
 export { type Gumbel, type GumbelOptions, gumbel } from './distributions/gumbel.js';
+export { type HalfCauchy, type HalfCauchyOptions, halfCauchy } from './distributions/halfCauchy.js';
+export { type HalfNormal, type HalfNormalOptions, halfNormal } from './distributions/halfNormal.js';
 export { type ImplicitDefinition, implicitFamily } from './distributions/implicitFamily.js';
 export { type Laplace, type LaplaceOptions, laplace } from './distributions/laplace.js';
 export type { LocationScaleOptions } from './distributions/locationScale.js';
@@ -56,6 +60,7 @@ export {
 } from './distributions/locationScaleFamily.js';
 export { type Logistic, type LogisticOptions, logistic } from './distributions/logistic.js';
 export { type LogitNormal, type LogitNormalOptions, logitNormal } from './distributions/logitNormal.js';
+export { type LogLogistic, type LogLogisticOptions, logLogistic } from './distributions/logLogistic.js';
 export { type LogNormal, type LogNormalOptions, logNormal } from './distributions/logNormal.js';
 export {
   type MultivariateNormal,
@@ -64,12 +69,15 @@ export {
 } from './distributions/multivariateNormal.js';
 export { type Normal, type NormalOptions, normal } from './distributions/normal.js';
 export type { OneOf } from './distributions/oneOf.js';
+export { type Pareto, type ParetoOptions, pareto } from './distributions/pareto.js';
 export { type Poisson, type PoissonOptions, poisson } from './distributions/poisson.js';
 export { type Product, type ProductBase, product } from './distributions/product.js';
 export { type QuantileDefinition, quantileFamily } from './distributions/quantileFamily.js';
+export { type Rayleigh, type RayleighOptions, rayleigh } from './distributions/rayleigh.js';
 export { type Reciprocal, type ReciprocalOptions, reciprocal } from './distributions/reciprocal.js';
 export { type Triangular, type TriangularOptions, triangular } from './distributions/triangular.js';
 export { type Uniform, type UniformOptions, uniform } from './distributions/uniform.js';
+export { type Weibull, type WeibullOptions, weibull } from './distributions/weibull.js';
 export { type ClosedPartner, kl, type NoClosedKl, sampledKl } from './divergence/kl.js';
 export { hasClosedKl, registerKl } from './divergence/registerKl.js';
 export type { ClosedKlPairs, HasClosedKl } from './divergence/registry.js';

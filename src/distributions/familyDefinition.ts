@@ -5,6 +5,7 @@ import {
   count,
   interval,
   positive,
+  ray,
   real,
   type Support,
   type SupportName,
@@ -43,7 +44,15 @@ const domains: Record<ParameterDomain, Domain> = {
 /** Scalar sets that a user's family can live on. */
 export type ScalarSupport = Exclude<SupportName, 'categories' | 'realVector'>;
 
-const supports: Record<ScalarSupport, Support> = { real, positive, unitInterval, interval, binary, count };
+const supports: Record<ScalarSupport, Support> = {
+  real,
+  positive,
+  unitInterval,
+  interval,
+  ray,
+  binary,
+  count,
+};
 
 /** The closed forms that a definition may have. */
 export interface ClosedFormulas {

@@ -1,7 +1,10 @@
 import type { Distribution } from '../distributions/distribution.js';
 import { registerCategoricalKl } from './categoricalKl.js';
 import { registerMultivariateNormalKl } from './multivariateNormalKl.js';
+import { registerExponentialCrossKl } from './own/exponentialCrossKl.js';
+import { registerExtremeKl } from './own/extremeKl.js';
 import { registerReciprocalKl } from './own/reciprocalKl.js';
+import { registerScaleKl } from './own/scaleKl.js';
 import { findKl, type KlFormula } from './registry.js';
 import { registerScalarKl } from './scalarKl.js';
 
@@ -15,6 +18,9 @@ export function ensureClosedForms(): void {
   registerReciprocalKl();
   registerCategoricalKl();
   registerMultivariateNormalKl();
+  registerScaleKl();
+  registerExtremeKl();
+  registerExponentialCrossKl();
 }
 
 /** The closed form for a pair of distributions, or `undefined`. */

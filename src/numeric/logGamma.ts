@@ -3,10 +3,15 @@ import { digamma } from './digamma.js';
 import { stirlingSeries } from './stirlingSeries.js';
 
 /**
- * log Γ(2 + t) for |t| ≤ ½, by t (1 − γ + Σ_{k≥2} (−1)^k (ζ(k) − 1) t^{k−1} / k): relative accuracy is kept at
- * the zero t = 0. Source: DLMF 5.7.3; coefficients by mpmath at 50 digits.
+ * What log Γ(2 + t) leaves after its linear term (1 − γ) t, for |t| ≤ ½: relative accuracy is kept at t = 0.
+ * Source: DLMF 5.7.3; coefficients by mpmath at 50 digits.
  */
-export function logGammaNear2(t: number): number {
+export function logGammaNear2Tail(t: number): number {
+  return t * t * near2(t);
+}
+
+// Σ_{k≥2} (−1)^k (ζ(k) − 1) t^{k−2} / k.
+function near2(t: number): number {
   let p = -1.1921401405860912e-9;
   p = 2.4836745438024785e-9 + t * p;
   p = -5.183475041970047e-9 + t * p;
@@ -31,8 +36,15 @@ export function logGammaNear2(t: number): number {
   p = 0.020580808427784546 + t * p;
   p = -0.0673523010531981 + t * p;
   p = 0.3224670334241132 + t * p;
-  p = 0.42278433509846713 + t * p;
-  return t * p;
+  return p;
+}
+
+/**
+ * log Γ(2 + t) for |t| ≤ ½, by t (1 − γ + Σ_{k≥2} (−1)^k (ζ(k) − 1) t^{k−1} / k): relative accuracy is kept at
+ * the zero t = 0. Source: DLMF 5.7.3; coefficients by mpmath at 50 digits.
+ */
+export function logGammaNear2(t: number): number {
+  return t * (0.42278433509846713 + t * near2(t));
 }
 
 /**

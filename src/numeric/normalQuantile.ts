@@ -6,7 +6,7 @@ import { logNormalCdf, logNormalCdfDerivative, normalDensity } from './normalCdf
  * The x with erf(x/√2) = y for |y| ≤ 0.62: a polynomial good to 3e-7, then one step of Halley's method, which
  * triples the digits. Working with y = 2p − 1 keeps the relative accuracy at the zero p = ½.
  */
-function centralQuantile(y: number): number {
+export function centralQuantile(y: number): number {
   const s = y * y;
   let p = 0.20811178380128645;
   p = 0.024965225998847422 + s * p;

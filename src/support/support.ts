@@ -4,6 +4,7 @@ export type SupportName =
   | 'positive'
   | 'unitInterval'
   | 'interval'
+  | 'ray'
   | 'binary'
   | 'count'
   | 'categories'
@@ -26,6 +27,8 @@ export const positive: Support = { name: 'positive', pointRank: 0, discrete: fal
 export const unitInterval: Support = { name: 'unitInterval', pointRank: 0, discrete: false };
 /** An interval that the parameters set. */
 export const interval: Support = { name: 'interval', pointRank: 0, discrete: false };
+/** The numbers from one that the parameters set. */
+export const ray: Support = { name: 'ray', pointRank: 0, discrete: false };
 /** Zero and one. */
 export const binary: Support = { name: 'binary', pointRank: 0, discrete: true };
 /** The whole numbers from zero. */

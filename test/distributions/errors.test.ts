@@ -75,6 +75,8 @@ const domains: Record<string, Domain> = {
   logRate: { words: 'between -700 and 700', outside: 700, fix: 'runaway' },
   scale: { words: 'positive', outside: 0, fix: 'pass logScale if your network can produce negative values' },
   rate: { words: 'positive', outside: -1, fix: 'pass logRate if your network can produce negative values' },
+  shape: { words: 'positive', outside: 0, fix: 'pass logShape if your network can produce negative values' },
+  logShape: { words: 'between -700 and 700', outside: 701, fix: 'runaway' },
   logit: { words: 'finite', fix: '' },
   probability: {
     words: 'strictly between 0 and 1',
@@ -85,6 +87,13 @@ const domains: Record<string, Domain> = {
   probabilities: { words: 'from 0 to 1', outside: -0.5, fix: 'mend the value', example: '[0.2, 0.8]' },
   covarianceFactor: { words: 'finite', fix: '', example: '[[1, 0], [0.5, 1]]' },
 };
+/** Every option's name: each parameter's in turn. */
+function namesOf(parametrizations: readonly object[]): string[] {
+  const most = Math.max(...parametrizations.map((p) => Object.keys(p).length));
+  const places = Array.from({ length: most }, (_, k) => parametrizations.map((p) => Object.keys(p)[k]));
+  return [...new Set(places.flat())].filter((name) => name !== undefined);
+}
+
 const runaway = 'a network that gives such values has diverged: clip its output, or lower the learning rate';
 
 function domainOf(family: string, name: string) {
@@ -224,7 +233,7 @@ describe.each(Object.entries(families))('%s', (family, { make, parametrizations 
     ['a number', 1, '1'],
     ['an array', [1], 'an array of 1'],
   ])('refuses %s in place of options', (_title, value, got) => {
-    const known = [...new Set(parametrizations.flatMap((p) => Object.keys(p)))];
+    const known = namesOf(parametrizations);
     expectError(
       () => make(value as never),
       ParameterError,

@@ -15,7 +15,7 @@ sys.dont_write_bytecode = True
 from machinery import write
 
 GROUPS = ['scalar', 'transforms', 'pair', 'gamma', 'gamma_inverse', 'beta', 'beta_inverse', 'bessel', 'log_sum', 'von_mises',
-          'student_t', 'skew_normal']
+          'student_t', 'skew_normal', 'exponential_integral']
 
 for group in sys.argv[1:] or GROUPS:
     write(group, importlib.import_module('group_' + group).tables())

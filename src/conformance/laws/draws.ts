@@ -93,6 +93,7 @@ function chiSquared(counts: readonly number[], expected: readonly number[], must
 const inside: Readonly<Record<string, (x: number) => boolean>> = {
   real: Number.isFinite,
   interval: Number.isFinite,
+  ray: Number.isFinite,
   positive: (x) => x >= 0 && x < Number.POSITIVE_INFINITY,
   unitInterval: (x) => x >= 0 && x <= 1,
   binary: (x) => x === 0 || x === 1,

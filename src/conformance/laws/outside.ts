@@ -9,6 +9,7 @@ const broken = [0.5, 2.5, 1e-38, 1 - 2 ** -24, Number.POSITIVE_INFINITY];
 const outsidePoints: Readonly<Record<string, readonly number[]>> = {
   real: [Number.NEGATIVE_INFINITY, Number.POSITIVE_INFINITY],
   interval: far,
+  ray: [-3e38, Number.NEGATIVE_INFINITY, Number.POSITIVE_INFINITY],
   positive: [...negative, Number.POSITIVE_INFINITY],
   unitInterval: [...negative, 1 + 2 ** -23, 2, 3e38, Number.POSITIVE_INFINITY],
   binary: [...negative, ...broken, 2],

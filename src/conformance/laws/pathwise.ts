@@ -40,7 +40,7 @@ export function pathwiseGradient(subject: Subject): void {
   const [middle, spread] = [sample[50]!, sample[84]! - sample[16]! || 1];
   const unit = (z: number) => (z - middle) / spread;
   const draws = pathwiseDraws(subject, 'pathwise');
-  const scores = subject.d.support.name === 'interval' ? undefined : scoredDraws(subject);
+  const scores = ['interval', 'ray'].includes(subject.d.support.name) ? undefined : scoredDraws(subject);
   for (const [title, f] of Object.entries(functions)) {
     const baseline = Array.from(sample, (z) => f.value(unit(z))).reduce((a, b) => a + b, 0) / sample.length;
     draws.slopes.forEach((slope, k) => {

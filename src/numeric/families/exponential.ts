@@ -56,7 +56,7 @@ export function exponentialCdf_x(x: number, rate: number): number {
   return x >= 0.0 ? rate * Math.exp(-rate * x) : 0.0;
 }
 export function exponentialCdf_rate(x: number, rate: number): number {
-  return x >= 0.0 ? x * Math.exp(-rate * x) : 0.0;
+  return x >= 0.0 && x < Infinity ? x * Math.exp(-rate * x) : 0.0;
 }
 
 /** Survival function, exp(−rate · x). @kernel */

@@ -1,7 +1,9 @@
 // The standard Gumbel distribution, for maxima, in double precision: distribution function exp(−exp(−z)).
 // Source: Johnson, Kotz and Balakrishnan, Continuous Univariate Distributions 2 (1995), chapter 22.
+import { logRatio } from '../deviance.js';
 import { log1mexp, log1mexp_x } from '../log1mexp.js';
 import { logDistance } from '../logDistance.js';
+import { extremeKl, extremeKlDistance, extremeKlRatio, extremeKlUnit } from './extremeKl.js';
 
 const eulerGamma = 0.57721566490153286061;
 
@@ -79,4 +81,49 @@ export function gumbelVariance(): number {
 /** Entropy, 1 + Euler's constant. @kernel located entropy */
 export function gumbelEntropy(): number {
   return 1.0 + eulerGamma;
+}
+
+/**
+ * Divergence, exp(−d) Γ(1 + r) − 1 + d − log r + γ (r − 1) with r = scale / otherScale and d = (location −
+ * otherLocation) / otherScale, arranged as in extremeKl; by direct integration, with E exp(−s Z) = Γ(1 + s). @kernel
+ */
+export function gumbelKl(location: number, scale: number, otherLocation: number, otherScale: number): number {
+  const d = (location - otherLocation) / otherScale;
+  const logR = logRatio(scale, otherScale);
+  return extremeKl(scale / otherScale, (scale - otherScale) / otherScale, d, logR);
+}
+export function gumbelKl_location(
+  location: number,
+  scale: number,
+  otherLocation: number,
+  otherScale: number,
+): number {
+  const d = (location - otherLocation) / otherScale;
+  return extremeKlDistance(scale / otherScale, (scale - otherScale) / otherScale, d) / otherScale;
+}
+export function gumbelKl_scale(
+  location: number,
+  scale: number,
+  otherLocation: number,
+  otherScale: number,
+): number {
+  const d = (location - otherLocation) / otherScale;
+  return extremeKlRatio(scale / otherScale, (scale - otherScale) / otherScale, d) / scale;
+}
+export function gumbelKl_otherLocation(
+  location: number,
+  scale: number,
+  otherLocation: number,
+  otherScale: number,
+): number {
+  return -gumbelKl_location(location, scale, otherLocation, otherScale);
+}
+export function gumbelKl_otherScale(
+  location: number,
+  scale: number,
+  otherLocation: number,
+  otherScale: number,
+): number {
+  const d = (location - otherLocation) / otherScale;
+  return -extremeKlUnit(scale / otherScale, (scale - otherScale) / otherScale, d) / otherScale;
 }

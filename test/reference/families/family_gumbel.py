@@ -11,7 +11,7 @@ from scalar import constant
 # The forms of each parameter, the one that formulas read first.
 PARAMETERS = {'location': ['location'], 'scale': ['scale', 'logScale']}
 # Precision of the lower of two runs, by function; '' for the others.
-DIGITS = {'': 400}
+DIGITS = {'': 400, 'kl': 500}
 
 
 def clamped(x, location, scale):
@@ -64,6 +64,7 @@ def kl(l, s, m, t):
 
 
 BOTH, THREE = 'location scale', 'x location scale'
+FOUR = 'location scale otherLocation otherScale'
 # The kernel, the formula (a list of terms), its arguments, those it has a partial derivative in.
 FUNCTIONS = {
     'logDensity': ('gumbelLogDensity', log_density, THREE, THREE),
@@ -77,6 +78,7 @@ FUNCTIONS = {
     'mode': ('identity', lambda l: [l], 'location', 'location'),
     'variance': ('gumbelVariance', lambda s: [square(s) * mpmath.pi ** 2 / 6], 'scale', 'scale'),
     'entropy': ('gumbelEntropy', lambda s: [log(s), constant(1 + mpmath.euler, s)], 'scale', 'scale'),
+    'kl': ('gumbelKl', kl, FOUR, FOUR),
 }
 
 AT_X = (located, located_corners())
@@ -88,4 +90,5 @@ POINTS = {
     'mean': (lambda d: (center(d), spread(d)), [(l, s) for l in (0.0, 1.0, -1e20, -0.5772157) for (s,) in ONE_SPREAD]),
     'mode': (lambda d: (center(d),), [(c,) for c in fence(0, 1, -1, 1e30, 16777216, -5, 1e-30)]),
     'variance': (lambda d: (spread(d),), ONE_SPREAD), 'entropy': (lambda d: (spread(d),), ONE_SPREAD),
+    'kl': (located_pair, PAIRS),
 }

@@ -302,6 +302,7 @@ def points(family, function, names, count=220, corners=None):
     # Logarithms beyond what float32 could hold after the transform: beside the first adversarial points.
     for at, name in enumerate(plain):
         if name.startswith('log') and name != 'logit' and not (family == 'poisson' and function == 'cdf'):
-            for far, row in zip(FAR_LOGS * 3, rows[count:]):
+            # Shapes are held to 1e-6 … 1e6.
+            for far, row in zip([0.0, 1e-7, -1e-7, 13.5, -13.5] if name == 'logShape' else FAR_LOGS * 3, rows[count:]):
                 rows.append(row[:at] + (f32(2 * far if name == 'logVariance' else far),) + row[at + 1:])
     return list(dict.fromkeys(rows))
