@@ -1,6 +1,8 @@
 import type { Distribution } from '../distributions/distribution.js';
 import { registerCategoricalKl } from './categoricalKl.js';
 import { registerMultivariateNormalKl } from './multivariateNormalKl.js';
+import { registerBetaKl } from './own/betaKl.js';
+import { registerGammaKl } from './own/gammaKl.js';
 import { findKl, type KlFormula } from './registry.js';
 import { registerScalarKl } from './scalarKl.js';
 
@@ -13,6 +15,8 @@ export function ensureClosedForms(): void {
   registerScalarKl();
   registerCategoricalKl();
   registerMultivariateNormalKl();
+  registerGammaKl();
+  registerBetaKl();
 }
 
 /** The closed form for a pair of distributions, or `undefined`. */

@@ -17,6 +17,16 @@ export function digammaDifference(a: number, b: number): number {
     sum += b / x / (x + b);
     x += 1.0;
   }
+  return sum + Math.log1p(b / x) + digammaMinusLogDifference(x, b);
+}
+export function digammaDifference_b(a: number, b: number): number {
+  return trigamma(a + b);
+}
+
+/**
+ * (ψ(x + b) − log(x + b)) − (ψ(x) − log x) for x ≥ 8 and x + b ≥ 8, b of either sign, to its own relative accuracy.
+ */
+export function digammaMinusLogDifference(x: number, b: number): number {
   const r = 1.0 / x;
   const s = 1.0 / (x + b);
   // b r s and b r s (r + s) are r − s and r² − s² without their cancellation.
@@ -40,8 +50,5 @@ export function digammaDifference(a: number, b: number): number {
   q = p + v * q;
   p = 1.0 / 12.0 + u * p;
   q = p + v * q;
-  return sum + Math.log1p(b * r) + 0.5 * first + first * (r + s) * q;
-}
-export function digammaDifference_b(a: number, b: number): number {
-  return trigamma(a + b);
+  return 0.5 * first + first * (r + s) * q;
 }

@@ -85,3 +85,30 @@ export function logBetaI_x(a: number, b: number, x: number): number {
 function lowerTail(): number {
   return betaSide === 0.0 ? betaTail : Math.exp(log1mexp(betaLogShare) - betaLogScale);
 }
+
+/** log(1 − I_x(a, b)), likewise. */
+export function logBetaIComplement(a: number, b: number, x: number): number {
+  if (!(x > 0.0 && x < 1.0)) return x === 0.0 ? 0.0 : x === 1.0 ? -Infinity : NaN;
+  evaluate(a, b, x);
+  return betaSide === 1.0 ? betaLogShare : log1mexp(betaLogShare);
+}
+export function logBetaIComplement_a(a: number, b: number, x: number): number {
+  if (!(x > 0.0 && x < 1.0)) return x === 0.0 ? 0.0 : NaN;
+  evaluate(a, b, x);
+  return -betaSlopeA / upperTail();
+}
+export function logBetaIComplement_b(a: number, b: number, x: number): number {
+  if (!(x > 0.0 && x < 1.0)) return x === 0.0 ? 0.0 : x === 1.0 ? -Infinity : NaN;
+  evaluate(a, b, x);
+  return -betaSlopeB / upperTail();
+}
+export function logBetaIComplement_x(a: number, b: number, x: number): number {
+  if (!(x > 0.0 && x < 1.0)) return x === 0.0 ? -edgeDensity(a, b) : x === 1.0 ? -Infinity : NaN;
+  evaluate(a, b, x);
+  return -1.0 / (x * (1.0 - x) * upperTail());
+}
+
+/** (1 − I) / D after a call of `evaluate`. */
+function upperTail(): number {
+  return betaSide === 1.0 ? betaTail : Math.exp(log1mexp(betaLogShare) - betaLogScale);
+}

@@ -4,7 +4,15 @@ import { evaluateCompiled } from '../../src/kernels/evaluate.js';
 import { catalogue } from '../../src/kernels/generated/catalogue.js';
 import { formulas } from '../../src/kernels/generated/formulas.js';
 import { overflow, score, ulp32 } from '../numeric/ulp.js';
-import { families, publicFunction, type Reference, references, titleOf } from './families.js';
+import {
+  families,
+  kernelArguments,
+  placeOf,
+  publicFunction,
+  type Reference,
+  references,
+  titleOf,
+} from './families.js';
 
 // Half a unit is the rounding to float32, a hundredth what the double inside may add. Where a sum crosses zero,
 // 2^-50 of the sizes of its terms is allowed, divergences excepted. Behind a change of parametrization, so is what
@@ -50,7 +58,8 @@ function worst(reference: Reference, which: number, got: ArrayLike<number>, effe
 function insideDouble(reference: Reference, which: number): { doubles: Float64Array; effects: Float64Array } {
   const kernel = kernels[reference.kernel]!;
   const partial = which === 0 ? -1 : reference.arguments.indexOf(reference.partials[which - 1]!);
-  const f = partial < 0 ? kernel.value : kernel.partials[partial]!;
+  const own = partial < 0 ? kernel.value : kernel.partials[placeOf(reference, partial)]!;
+  const f: Scalar = (...args) => own(...kernelArguments(reference, args));
   const count = reference.exact[0]!.length;
   const [doubles, effects] = [new Float64Array(count), new Float64Array(count)];
   for (let i = 0; i < count; i++) {
@@ -74,13 +83,18 @@ function insideDouble(reference: Reference, which: number): { doubles: Float64Ar
 }
 
 /** A draw comes from a sampler: how it moves with the parameters is the compiled kernel's, at the point given. */
-const isDraw = ({ function: name }: Reference): boolean => name === 'draw' || name === 'drawLog';
+const isDraw = ({ function: name }: Reference): boolean => name.startsWith('draw');
 
 function drawSlopes(reference: Reference): ArrayLike<number>[] {
   const compiled = catalogueOf(reference.kernel);
-  const operands = reference.columns.map((data, k) => {
+  const own = reference.columns.map((data, k) => {
     const name = reference.transforms[k];
     return { data, shape: [data.length], transform: name ? catalogueOf(name).index : -1, name };
+  });
+  const places = own.map((_, k) => placeOf(reference, k));
+  const operands = kernelArguments(reference, []).map((value, place) => {
+    const k = places.indexOf(place);
+    return k >= 0 ? own[k]! : { data: Float32Array.of(value), shape: [], transform: -1, name: undefined };
   });
   const run = (formula: number, at: number): Float32Array => {
     const own = at < 0 ? undefined : operands[at]!.name;
@@ -97,7 +111,7 @@ function drawSlopes(reference: Reference): ArrayLike<number>[] {
   const found = [run(compiled.index, -1)];
   for (const name of reference.partials) {
     const k = reference.arguments.indexOf(name);
-    found.push(run(compiled.partials[k]!, k));
+    found.push(run(compiled.partials[places[k]!]!, places[k]!));
   }
   return found;
 }

@@ -36,11 +36,15 @@ export interface FamilyEntry {
   readonly roundings: number;
   /** Functions without a composed form. */
   readonly kernelOnly?: readonly string[];
+  /** Parameters that are the same for all members, which the family's kernels read too. */
+  readonly fixed?: Readonly<Record<string, number>>;
   /** What a parameter is when a function does not depend on it. */
   readonly resting?: Readonly<Record<string, number>>;
 }
 
-const files = readdirSync(import.meta.dirname).filter((name) => name.endsWith('.ts') && !['entry.ts', 'parameters.ts'].includes(name));
+const files = readdirSync(import.meta.dirname).filter(
+  (name) => name.endsWith('.ts') && !['entry.ts', 'parameters.ts'].includes(name),
+);
 
 /** The families that have a file of their own here, by name. */
 export const entries: Readonly<Record<string, FamilyEntry>> = Object.fromEntries(
