@@ -1,13 +1,17 @@
 /** Names of the library's own families, which a user's family may not take: divergences are found by name. */
 export const familyNames: readonly string[] = [
   'bernoulli',
+  'beta',
   'categorical',
   'cauchy',
+  'chiSquared',
   'exponential',
+  'gamma',
   'gompertz',
   'gumbel',
   'halfCauchy',
   'halfNormal',
+  'inverseGamma',
   'laplace',
   'logistic',
   'logitNormal',

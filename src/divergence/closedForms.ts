@@ -1,8 +1,10 @@
 import type { Distribution } from '../distributions/distribution.js';
 import { registerCategoricalKl } from './categoricalKl.js';
 import { registerMultivariateNormalKl } from './multivariateNormalKl.js';
+import { registerBetaKl } from './own/betaKl.js';
 import { registerExponentialCrossKl } from './own/exponentialCrossKl.js';
 import { registerExtremeKl } from './own/extremeKl.js';
+import { registerGammaKl } from './own/gammaKl.js';
 import { registerReciprocalKl } from './own/reciprocalKl.js';
 import { registerScaleKl } from './own/scaleKl.js';
 import { findKl, type KlFormula } from './registry.js';
@@ -21,6 +23,8 @@ export function ensureClosedForms(): void {
   registerScaleKl();
   registerExtremeKl();
   registerExponentialCrossKl();
+  registerGammaKl();
+  registerBetaKl();
 }
 
 /** The closed form for a pair of distributions, or `undefined`. */
