@@ -47,6 +47,11 @@ export type {
 export type { FamilyFormula, NumberFormula } from './distributions/familyFormula.js';
 export { type Gumbel, type GumbelOptions, gumbel } from './distributions/gumbel.js';
 export { type ImplicitDefinition, implicitFamily } from './distributions/implicitFamily.js';
+export {
+  type InverseGaussian,
+  type InverseGaussianOptions,
+  inverseGaussian,
+} from './distributions/inverseGaussian.js';
 export { type Laplace, type LaplaceOptions, laplace } from './distributions/laplace.js';
 export type { LocationScaleOptions } from './distributions/locationScale.js';
 export {

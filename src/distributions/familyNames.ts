@@ -4,6 +4,7 @@ export const familyNames: readonly string[] = [
   'categorical',
   'exponential',
   'gumbel',
+  'inverseGaussian',
   'laplace',
   'logistic',
   'logNormal',

@@ -1,6 +1,7 @@
 import type { Distribution } from '../distributions/distribution.js';
 import { registerCategoricalKl } from './categoricalKl.js';
 import { registerMultivariateNormalKl } from './multivariateNormalKl.js';
+import { registerInverseGaussianKl } from './own/inverseGaussianKl.js';
 import { findKl, type KlFormula } from './registry.js';
 import { registerScalarKl } from './scalarKl.js';
 
@@ -13,6 +14,7 @@ export function ensureClosedForms(): void {
   registerScalarKl();
   registerCategoricalKl();
   registerMultivariateNormalKl();
+  registerInverseGaussianKl();
 }
 
 /** The closed form for a pair of distributions, or `undefined`. */

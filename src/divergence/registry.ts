@@ -22,6 +22,7 @@ export interface ClosedKlPairs {
   'bernoulli|bernoulli': true;
   'categorical|categorical': true;
   'poisson|poisson': true;
+  'inverseGaussian|inverseGaussian': true;
   'multivariateNormal|multivariateNormal': true;
   'multivariateNormal|product<normal>': true;
   'product<normal>|multivariateNormal': true;

@@ -73,6 +73,21 @@ const domains: Record<string, { words: string; outside?: number; fix: string; ex
   logRate: { words: 'between -700 and 700', outside: 700, fix: 'runaway' },
   scale: { words: 'positive', outside: 0, fix: 'pass logScale if your network can produce negative values' },
   rate: { words: 'positive', outside: -1, fix: 'pass logRate if your network can produce negative values' },
+  shape: { words: 'positive', outside: 0, fix: 'pass logShape if your network can produce negative values' },
+  degreesOfFreedom: {
+    words: 'positive',
+    outside: 0,
+    fix: 'pass logDegreesOfFreedom if your network can produce negative values',
+  },
+  concentration: {
+    words: 'positive',
+    outside: 0,
+    fix: 'pass logConcentration if your network can produce negative values',
+  },
+  logShape: { words: 'between -700 and 700', outside: 701, fix: 'runaway' },
+  logMean: { words: 'between -700 and 700', outside: -701, fix: 'runaway' },
+  logConcentration: { words: 'between -80 and 80', outside: -81, fix: 'runaway' },
+  logDegreesOfFreedom: { words: 'between -30 and 80', outside: 81, fix: 'runaway' },
   logit: { words: 'finite', fix: '' },
   probability: {
     words: 'strictly between 0 and 1',
@@ -92,6 +107,9 @@ function domainOf(family: string, name: string) {
   if (family === 'exponential' && name === 'scale') return { words: 'positive', outside: 0, fix: rate };
   if ((family === 'exponential' || family === 'poisson') && name === 'mean') {
     return { words: 'positive', outside: -3, fix: rate };
+  }
+  if (family === 'inverseGaussian' && name === 'mean') {
+    return { words: 'positive', outside: 0, fix: 'pass logMean if your network can produce negative values' };
   }
   if (family === 'multivariateNormal' && name === 'mean') return { ...domain, example: '[0, 0]' };
   return domain.fix === 'runaway' ? { ...domain, fix: runaway } : domain;

@@ -35,6 +35,7 @@ def load(family):
     FUNCTIONS[family], SPREADS[family] = module.FUNCTIONS, module.PARAMETERS
     points.POINTS[family] = module.POINTS
     scalar.FORMS.update({f'{family}.{name}': entry for name, entry in getattr(module, 'FORMS', {}).items()})
+    points.LIMITS.update({f'{family}.{name}': ends for name, ends in getattr(module, 'LIMITS', {}).items()})
     DIGITS[family] = getattr(module, 'DIGITS', {})
     JOINTS[family] = getattr(module, 'JOINTS', [])
 
