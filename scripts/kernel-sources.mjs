@@ -151,7 +151,9 @@ function placed(f, functions) {
     return name;
   };
   const partials = parameters.map(partial);
-  const imports = [...functions.keys()].filter((n) => n === f.name || n.startsWith(`${f.name}_`));
+  const imports = [...functions.keys()].filter(
+    (n) => (n === f.name && kindName !== 'slope') || n.startsWith(`${f.name}_`),
+  );
   return { name: f.name, parameters, partials, text, imports };
 }
 

@@ -55,6 +55,11 @@ export { type HalfCauchy, type HalfCauchyOptions, halfCauchy } from './distribut
 export { type HalfNormal, type HalfNormalOptions, halfNormal } from './distributions/halfNormal.js';
 export { type ImplicitDefinition, implicitFamily } from './distributions/implicitFamily.js';
 export { type InverseGamma, type InverseGammaOptions, inverseGamma } from './distributions/inverseGamma.js';
+export {
+  type InverseGaussian,
+  type InverseGaussianOptions,
+  inverseGaussian,
+} from './distributions/inverseGaussian.js';
 export { type Laplace, type LaplaceOptions, laplace } from './distributions/laplace.js';
 export type { LocationScaleOptions } from './distributions/locationScale.js';
 export {

@@ -12,6 +12,7 @@ export const familyNames: readonly string[] = [
   'halfCauchy',
   'halfNormal',
   'inverseGamma',
+  'inverseGaussian',
   'laplace',
   'logistic',
   'logitNormal',

@@ -72,9 +72,7 @@ export function readParameters(
   options: object,
   elsewhere: readonly ParameterForms[] = [],
 ): Record<string, Operand> {
-  requireKnownKeys(family, options, [
-    ...new Set([forms, ...elsewhere].flatMap((f) => Object.values(f).flatMap(Object.keys))),
-  ]);
+  requireKnownKeys(family, options, [...new Set([forms, ...elsewhere].flatMap(namesOf))]);
   const given = options as Record<string, ParameterValue | undefined>;
   const result: Record<string, Operand> = {};
   for (const [parameter, ways] of Object.entries(forms)) {
@@ -94,6 +92,12 @@ export function readParameters(
     result[parameter] = operand;
   }
   return result;
+}
+
+/** The options' names: a complete choice of them first, then the other ways to give each parameter. */
+function namesOf(forms: ParameterForms): string[] {
+  const ways = Object.values(forms).map(Object.keys);
+  return [...ways.map(([first]) => first!), ...ways.flat()];
 }
 
 function example(forms: ParameterForms): string {

@@ -5,6 +5,7 @@ import { registerBetaKl } from './own/betaKl.js';
 import { registerExponentialCrossKl } from './own/exponentialCrossKl.js';
 import { registerExtremeKl } from './own/extremeKl.js';
 import { registerGammaKl } from './own/gammaKl.js';
+import { registerInverseGaussianKl } from './own/inverseGaussianKl.js';
 import { registerReciprocalKl } from './own/reciprocalKl.js';
 import { registerScaleKl } from './own/scaleKl.js';
 import { findKl, type KlFormula } from './registry.js';
@@ -25,6 +26,7 @@ export function ensureClosedForms(): void {
   registerExponentialCrossKl();
   registerGammaKl();
   registerBetaKl();
+  registerInverseGaussianKl();
 }
 
 /** The closed form for a pair of distributions, or `undefined`. */

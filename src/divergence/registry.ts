@@ -49,6 +49,7 @@ export interface ClosedKlPairs {
   'halfNormal|exponential': true;
   'exponential|halfNormal': true;
   'pareto|exponential': true;
+  'inverseGaussian|inverseGaussian': true;
   'multivariateNormal|multivariateNormal': true;
   'multivariateNormal|product<normal>': true;
   'product<normal>|multivariateNormal': true;

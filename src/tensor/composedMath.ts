@@ -73,6 +73,13 @@ export function composedLogOdds(p: tf.Tensor): tf.Tensor {
   return withSlope(p, value, (v) => tf.div(1, tf.mul(v, tf.sub(1, v))));
 }
 
+/** x / m − 1: from the difference where the two are close, from the ratio elsewhere, whose derivative is one term. */
+export function relativeDistance(x: tf.Tensor, m: tf.Tensor): tf.Tensor {
+  const difference = tf.div(tf.sub(x, m), m);
+  const ratio = tf.sub(tf.div(x, m), 1);
+  return when(tf.less(tf.abs(difference), 0.25), difference, ratio);
+}
+
 /** |x|, whose derivative at zero is zero. */
 export function composedAbs(x: tf.Tensor): tf.Tensor {
   return tf.mul(x, detach(tf.sign(x)));

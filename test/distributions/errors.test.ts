@@ -84,6 +84,9 @@ const domains: Record<string, Domain> = {
   concentration: { words: 'positive', outside: 0, fix: 'mend the value' },
   degreesOfFreedom: { words: 'positive', outside: 0, fix: 'mend the value' },
   dispersion: { words: 'positive', outside: 0, fix: 'mend the value' },
+  logMean: { words: 'between -700 and 700', outside: -701, fix: 'runaway' },
+  logConcentration: { words: 'between -80 and 80', outside: -81, fix: 'runaway' },
+  logDegreesOfFreedom: { words: 'between -30 and 80', outside: 81, fix: 'runaway' },
   logit: { words: 'finite', fix: '' },
   probability: {
     words: 'strictly between 0 and 1',
@@ -109,6 +112,16 @@ function domainOf(family: string, name: string) {
   }
   if (family === 'gamma' && name === 'mean') {
     return { words: 'positive', outside: 0, fix: 'mend the value' };
+  }
+  if (
+    (family === 'studentT' && name === 'degreesOfFreedom') ||
+    (family === 'vonMises' && name === 'concentration')
+  ) {
+    const log = `log${name[0]!.toUpperCase()}${name.slice(1)}`;
+    return { words: 'positive', outside: 0, fix: `pass ${log} if your network can produce negative values` };
+  }
+  if (family === 'inverseGaussian' && name === 'mean') {
+    return { words: 'positive', outside: 0, fix: 'pass logMean if your network can produce negative values' };
   }
   if (family === 'multivariateNormal' && name === 'mean') return { ...domain, example: '[0, 0]' };
   return domain.fix === 'runaway' ? { ...domain, fix: runaway } : domain;

@@ -40,6 +40,7 @@ def load(family):
     FIRST_FORMS.update((family, function) for function in getattr(module, 'FIRST_FORMS', ()))
     if getattr(module, 'ONE_BY_ONE', False):
         SINGLE.add(family)
+    points.LIMITS.update({f'{family}.{name}': ends for name, ends in getattr(module, 'LIMITS', {}).items()})
     DIGITS[family] = getattr(module, 'DIGITS', {})
     JOINTS[family] = getattr(module, 'JOINTS', [])
 

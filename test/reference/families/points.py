@@ -290,6 +290,10 @@ for family in ('normal', 'laplace', 'logistic', 'logNormal', 'uniform'):
     POINTS[family]['upperQuantile'] = POINTS[family]['quantile']
 
 
+# Ends of the domain of a logarithm, where it is not the usual one.
+LIMITS = {}
+
+
 def points(family, function, names, count=220, corners=None):
     """Arguments in the given forms, by name: 'x' and 'p' as they are, parameters through their inverse."""
     make, adversarial = POINTS[family][function]
@@ -307,6 +311,8 @@ def points(family, function, names, count=220, corners=None):
         if name.startswith('log') and name != 'logit' and not (family == 'poisson' and function == 'cdf'):
             # Shapes are held to 1e-6 … 1e6.
             held = [0.0, 1e-7, -1e-7, 13.5, -13.5] if name == 'logShape' else FAR_LOGS
+            low, high = LIMITS.get(f'{family}.{name}', (-1400, 1400))
             for far, row in zip(FAR.get((family, name), held) * 3, rows[count:]):
+                far = max(low, min(high, far))
                 rows.append(row[:at] + (f32(2 * far if name == 'logVariance' else far),) + row[at + 1:])
     return list(dict.fromkeys(rows))
