@@ -292,19 +292,21 @@ export function kernelSources(root) {
   const names = kernels.map((k) => k.name);
   const twice = names.filter((name, i) => names.indexOf(name) !== i);
   if (twice.length > 0) throw new Error(`two kernels share the name ${twice[0]}`);
-  return { kernels, derived: `${mergeImports(imports)}\n\n${text.join('\n\n')}\n` };
+  return { kernels, derived: `${mergeImports(imports, text.join('\n\n'))}\n\n${text.join('\n\n')}\n` };
 }
 
-/** One import of each name. */
-function mergeImports(imports) {
+/** One import of each name that the text reads. */
+function mergeImports(imports, text) {
+  const read = new Set(text.match(/\w+/g));
   const byModule = new Map();
   for (const line of imports) {
     const [, names, module] = /^import \{ (.*) \} from '(.*)';$/.exec(line);
     const set = byModule.get(module) ?? new Set();
-    for (const n of names.split(', ')) set.add(n);
+    for (const n of names.split(', ')) if (read.has(n.split(' ').at(-1))) set.add(n);
     byModule.set(module, set);
   }
   return [...byModule]
+    .filter(([, set]) => set.size > 0)
     .map(([module, set]) => `import { ${[...set].join(', ')} } from '${module}';`)
     .join('\n');
 }

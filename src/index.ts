@@ -14,7 +14,9 @@ export type {
   UnknownLatents,
 } from './bounds/pairing.js';
 export { type Bernoulli, type BernoulliOptions, bernoulli } from './distributions/bernoulli.js';
+export { type Beta, type BetaOptions, beta } from './distributions/beta.js';
 export { type Categorical, type CategoricalOptions, categorical } from './distributions/categorical.js';
+export { type ChiSquared, type ChiSquaredOptions, chiSquared } from './distributions/chiSquared.js';
 export type {
   Distribution,
   HasCdf,
@@ -45,8 +47,10 @@ export type {
   ScalarSupport,
 } from './distributions/familyDefinition.js';
 export type { FamilyFormula, NumberFormula } from './distributions/familyFormula.js';
+export { type Gamma, type GammaOptions, gamma } from './distributions/gamma.js';
 export { type Gumbel, type GumbelOptions, gumbel } from './distributions/gumbel.js';
 export { type ImplicitDefinition, implicitFamily } from './distributions/implicitFamily.js';
+export { type InverseGamma, type InverseGammaOptions, inverseGamma } from './distributions/inverseGamma.js';
 export { type Laplace, type LaplaceOptions, laplace } from './distributions/laplace.js';
 export type { LocationScaleOptions } from './distributions/locationScale.js';
 export {

@@ -1,9 +1,13 @@
 /** Names of the library's own families, which a user's family may not take: divergences are found by name. */
 export const familyNames: readonly string[] = [
   'bernoulli',
+  'beta',
   'categorical',
+  'chiSquared',
   'exponential',
+  'gamma',
   'gumbel',
+  'inverseGamma',
   'laplace',
   'logistic',
   'logNormal',

@@ -47,13 +47,15 @@ export function jointDefinition<Family extends string, R extends Route>(
   };
   const all = (found: Readonly<Record<string, Formula>> | undefined): Record<string, Formula> =>
     Object.fromEntries(Object.entries(found ?? {}).map(([name, f]) => [name, carried(f)]));
-  const { draw, drawLog } = definition;
+  const { draw, logDraws = {} } = definition;
   return {
     ...definition,
     parameters: joint.parameters,
     logDensity: carried(definition.logDensity),
     draw: { ...draw, ...(draw.formula ? { formula: carried(draw.formula) } : {}) } as typeof draw,
-    ...(drawLog ? { drawLog: { ...drawLog, formula: carried(drawLog.formula) } } : {}),
+    logDraws: Object.fromEntries(
+      Object.entries(logDraws).map(([name, how]) => [name, { ...how, formula: carried(how.formula) }]),
+    ),
     summaries: all(definition.summaries),
     functions: all(definition.functions),
   };

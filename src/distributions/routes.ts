@@ -44,6 +44,8 @@ interface OwnFamily<Family extends string> {
   readonly kernels?: string;
   readonly support: Support;
   readonly parameters: ParameterForms;
+  /** Parameters that carry no gradient, such as a count. */
+  readonly constant?: readonly string[];
   /** Parameters that are the same for all members, such as the scale of a chi-squared. */
   readonly fixed?: Readonly<Record<string, number>>;
   /** Parametrizations that give several parameters together. */
@@ -69,6 +71,8 @@ export interface OwnImplicit<Family extends string> extends OwnFamily<Family> {
   readonly sampler: Sampler;
   /** Another sampler for the draw's logarithm, whose derivatives are those of the kernel `<family>LogDraw`. */
   readonly logSampler?: Sampler;
+  /** One for its log odds, whose derivatives are those of the kernel `<family>LogOddsDraw`. */
+  readonly logOddsSampler?: Sampler;
   /** Whether the composed forms are the standard member's, in z. */
   readonly placed?: boolean;
 }
@@ -139,7 +143,7 @@ function formulas<Family extends string>(
 }
 
 function common<Family extends string>(own: OwnFamily<Family>) {
-  const { family, support, parameters, fixed, joints, kernels, check } = own;
+  const { family, support, parameters, fixed, constant, joints, kernels, check } = own;
   return {
     family,
     route: 'pathwise' as const,
@@ -147,6 +151,7 @@ function common<Family extends string>(own: OwnFamily<Family>) {
     parameters,
     kernels: kernels ?? family,
     ...(fixed ? { fixed } : {}),
+    ...(constant ? { constant } : {}),
     ...(joints ? { joints } : {}),
     ...(check ? { check } : {}),
   };
@@ -220,6 +225,11 @@ export function implicitRoute<Family extends string>(own: OwnImplicit<Family>): 
     ...common(own),
     ...found,
     draw: { sampler: own.sampler, formula: slope('Draw') },
-    ...(own.logSampler ? { drawLog: { sampler: own.logSampler, formula: slope('LogDraw') } } : {}),
+    logDraws: {
+      ...(own.logSampler ? { drawLog: { sampler: own.logSampler, formula: slope('LogDraw') } } : {}),
+      ...(own.logOddsSampler
+        ? { drawLogOdds: { sampler: own.logOddsSampler, formula: slope('LogOddsDraw') } }
+        : {}),
+    },
   });
 }

@@ -29,8 +29,8 @@ export interface ScalarDefinition<Family extends string, R extends Route> {
   readonly draw:
     | { readonly noise: NoiseKind | readonly NoiseKind[]; readonly formula: Formula }
     | { readonly sampler: Sampler; readonly formula?: Formula };
-  /** Draws of the logarithm, the same for the same stream. */
-  readonly drawLog?: { readonly sampler: Sampler; readonly formula: Formula };
+  /** Draws of functions of the draw, such as its logarithm, by method name; of the same draw for the same stream. */
+  readonly logDraws?: Readonly<Record<string, { readonly sampler: Sampler; readonly formula: Formula }>>;
   /** Formulas of the parameters alone. */
   readonly summaries?: Readonly<Record<string, Formula>>;
   /** Formulas of an argument, then parameters. */
@@ -41,6 +41,8 @@ export interface ScalarDefinition<Family extends string, R extends Route> {
   readonly joints?: readonly Joint[];
   /** Parameters that are the same for all members. */
   readonly fixed?: Readonly<Record<string, number>>;
+  /** Parameters that carry no gradient, such as a count. */
+  readonly constant?: readonly string[];
   /** Checks across parameters, such as an order between them. */
   check?(parameters: Record<string, Operand>): void;
 }
@@ -81,6 +83,7 @@ export function scalarFamily<Family extends string, R extends Route>(
     const used = found?.definition ?? definition;
     const elsewhere = joints.map((j) => j.parameters);
     const operands = readParameters(family, used.parameters, options, found ? [] : elsewhere);
+    for (const name of definition.constant ?? []) operands[name] = detachedOperand(operands[name]!);
     const arrayShape = broadcastShapes(
       family,
       Object.values(operands).map((o) => o.shape),
@@ -173,7 +176,7 @@ function member<Family extends string, R extends Route>(
     methods[name] = (x: tf.Tensor) =>
       applyFormula(`${family}.${name}`, formula, pick(formula, [point(name, x)]), { shape: arrayShape });
   }
-  if (definition.drawLog) methods.drawLog = drawBy('drawLog', definition.drawLog);
+  for (const [name, how] of Object.entries(definition.logDraws ?? {})) methods[name] = drawBy(name, how);
   return Object.freeze({
     family,
     route,

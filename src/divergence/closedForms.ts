@@ -1,6 +1,8 @@
 import type { Distribution } from '../distributions/distribution.js';
 import { registerCategoricalKl } from './categoricalKl.js';
 import { registerMultivariateNormalKl } from './multivariateNormalKl.js';
+import { registerBetaKl } from './own/betaKl.js';
+import { registerGammaKl } from './own/gammaKl.js';
 import { registerReciprocalKl } from './own/reciprocalKl.js';
 import { findKl, type KlFormula } from './registry.js';
 import { registerScalarKl } from './scalarKl.js';
@@ -15,6 +17,8 @@ export function ensureClosedForms(): void {
   registerReciprocalKl();
   registerCategoricalKl();
   registerMultivariateNormalKl();
+  registerGammaKl();
+  registerBetaKl();
 }
 
 /** The closed form for a pair of distributions, or `undefined`. */

@@ -19,6 +19,17 @@ export interface ClosedKlPairs {
   'laplace|laplace': true;
   'uniform|uniform': true;
   'exponential|exponential': true;
+  'exponential|gamma': true;
+  'gamma|exponential': true;
+  'beta|beta': true;
+  'gamma|gamma': true;
+  'uniform|beta': true;
+  'chiSquared|chiSquared': true;
+  'chiSquared|gamma': true;
+  'gamma|chiSquared': true;
+  'chiSquared|exponential': true;
+  'exponential|chiSquared': true;
+  'inverseGamma|inverseGamma': true;
   'bernoulli|bernoulli': true;
   'reciprocal|reciprocal': true;
   'categorical|categorical': true;

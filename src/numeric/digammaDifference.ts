@@ -23,30 +23,7 @@ export function digammaDifference(a: number, b: number): number {
     sum += b / x / (x + b);
     x += 1.0;
   }
-  const r = 1.0 / x;
-  const s = 1.0 / (x + b);
-  // b r s and b r s (r + s) are r − s and r² − s² without their cancellation.
-  const first = b * r * s;
-  const u = r * r;
-  const v = s * s;
-  // p runs through Horner's rule at u, q through the divided difference of the same polynomial between u and v.
-  let p = -3617.0 / 8160.0;
-  let q = p;
-  p = 1.0 / 12.0 + u * p;
-  q = p + v * q;
-  p = -691.0 / 32760.0 + u * p;
-  q = p + v * q;
-  p = 1.0 / 132.0 + u * p;
-  q = p + v * q;
-  p = -1.0 / 240.0 + u * p;
-  q = p + v * q;
-  p = 1.0 / 252.0 + u * p;
-  q = p + v * q;
-  p = -1.0 / 120.0 + u * p;
-  q = p + v * q;
-  p = 1.0 / 12.0 + u * p;
-  q = p + v * q;
-  return sum + Math.log1p(b * r) + 0.5 * first + first * (r + s) * q;
+  return sum + Math.log1p(b / x) + digammaMinusLogDifference(x, b);
 }
 /**
  * The partial derivative of `digammaDifference` in `b`.
@@ -100,4 +77,34 @@ export function digammaDifference_a(a: number, b: number): number {
   p = 1.0 / 6.0 + u * p;
   const third = (u + r * s + v) * p + s * v * (r + s) * q;
   return -sum - first * (1.0 + 0.5 * (r + s) + third);
+}
+
+/**
+ * (ψ(x + b) − log(x + b)) − (ψ(x) − log x) for x ≥ 8 and x + b ≥ 8, b of either sign, to its own relative accuracy.
+ */
+export function digammaMinusLogDifference(x: number, b: number): number {
+  const r = 1.0 / x;
+  const s = 1.0 / (x + b);
+  // b r s and b r s (r + s) are r − s and r² − s² without their cancellation.
+  const first = b * r * s;
+  const u = r * r;
+  const v = s * s;
+  // p runs through Horner's rule at u, q through the divided difference of the same polynomial between u and v.
+  let p = -3617.0 / 8160.0;
+  let q = p;
+  p = 1.0 / 12.0 + u * p;
+  q = p + v * q;
+  p = -691.0 / 32760.0 + u * p;
+  q = p + v * q;
+  p = 1.0 / 132.0 + u * p;
+  q = p + v * q;
+  p = -1.0 / 240.0 + u * p;
+  q = p + v * q;
+  p = 1.0 / 252.0 + u * p;
+  q = p + v * q;
+  p = -1.0 / 120.0 + u * p;
+  q = p + v * q;
+  p = 1.0 / 12.0 + u * p;
+  q = p + v * q;
+  return 0.5 * first + first * (r + s) * q;
 }

@@ -85,7 +85,7 @@ export function incompleteBeta(a: number, b: number, x: number, y: number, logX:
  * a y − b x. Where x is not small it is a − a x − b x with the rounding of the first difference put back: for
  * float32 arguments both products are exact.
  */
-function balance(a: number, b: number, x: number, y: number): number {
+export function balance(a: number, b: number, x: number, y: number): number {
   if (x < 1e-8 || y < 1e-8 || y !== 1.0 - x) return a * y - b * x;
   const ax = a * x;
   const difference = a - ax;
@@ -94,7 +94,7 @@ function balance(a: number, b: number, x: number, y: number): number {
 }
 
 /** log(x^a y^b / B(a, b)), by way of the saddle point where both shapes are large. */
-function logBetaScale(a: number, b: number, logX: number, logY: number, lambda: number): number {
+export function logBetaScale(a: number, b: number, logX: number, logY: number, lambda: number): number {
   if (Math.min(a, b) < 10.0) return a * logX + b * logY - logBeta(a, b);
   const n = a + b;
   return (
@@ -128,7 +128,7 @@ function quadrature(a: number, b: number, x: number, y: number, lambda: number):
 }
 
 /** log(m / a) with d = m − a given. */
-function logQuotient(a: number, m: number, d: number): number {
+export function logQuotient(a: number, m: number, d: number): number {
   return Math.abs(d) <= 0.5 * a ? Math.log1p(d / a) : Math.log(m / a);
 }
 

@@ -41,6 +41,22 @@ export function reciprocal_v(v: number): number {
   return -1.0 / (v * v);
 }
 
+/** exp(−v): a log rate to a scale, or a log scale to a rate. @kernel */
+export function exponentialReciprocal(v: number): number {
+  return Math.exp(-v);
+}
+export function exponentialReciprocal_v(v: number): number {
+  return -Math.exp(-v);
+}
+
+/** v / 2: degrees of freedom to a gamma's shape. @kernel */
+export function half(v: number): number {
+  return 0.5 * v;
+}
+export function half_v(_v: number): number {
+  return 0.5;
+}
+
 /** log v: for parameters that a formula reads as logarithms. @kernel */
 export function logarithm(v: number): number {
   return Math.log(v);

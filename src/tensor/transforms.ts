@@ -41,6 +41,17 @@ export const reciprocal = transform('reciprocal', numeric.reciprocal, numeric.re
   tf.div(1, v),
 );
 
+/** A log rate to a scale, exp(−v). */
+export const exponentialReciprocal = transform(
+  'exponentialReciprocal',
+  numeric.exponentialReciprocal,
+  numeric.exponentialReciprocal_v,
+  (v) => composedExp(tf.neg(v)),
+);
+
+/** Degrees of freedom to a gamma's shape, v / 2. */
+export const half = transform('half', numeric.half, numeric.half_v, (v) => tf.mul(v, 0.5));
+
 /** A probability to its log odds, log(v / (1 − v)). */
 export const logOdds = transform('logOdds', numeric.logOdds, numeric.logOdds_v, (v) => composedLogOdds(v));
 

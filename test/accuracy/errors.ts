@@ -1,5 +1,5 @@
 import { formulas } from '../../src/kernels/generated/formulas.js';
-import type { Reference } from '../distributions/families.js';
+import { kernelArguments, placeOf, type Reference } from '../distributions/families.js';
 import { overflow, score } from '../numeric/ulp.js';
 
 // How far the families' formulas lie from their references. Where a sum crosses zero, 2^-50 of the sizes of its terms
@@ -42,7 +42,8 @@ export function insideDouble(
 ): { doubles: Float64Array; effects: Float64Array } {
   const kernel = kernels[reference.kernel]!;
   const partial = which === 0 ? -1 : reference.arguments.indexOf(reference.partials[which - 1]!);
-  const f = partial < 0 ? kernel.value : kernel.partials[partial]!;
+  const own = partial < 0 ? kernel.value : kernel.partials[placeOf(reference, partial)]!;
+  const f: Scalar = (...args) => own(...kernelArguments(reference, args));
   const count = reference.exact[0]!.length;
   const [doubles, effects] = [new Float64Array(count), new Float64Array(count)];
   for (let i = 0; i < count; i++) {

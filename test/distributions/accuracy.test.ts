@@ -4,7 +4,15 @@ import { evaluateCompiled } from '../../src/kernels/evaluate.js';
 import { catalogue } from '../../src/kernels/generated/catalogue.js';
 import { argumentsText, errorsOf, insideDouble } from '../accuracy/errors.js';
 import { score, ulp32 } from '../numeric/ulp.js';
-import { families, publicFunction, type Reference, references, titleOf } from './families.js';
+import {
+  families,
+  kernelArguments,
+  placeOf,
+  publicFunction,
+  type Reference,
+  references,
+  titleOf,
+} from './families.js';
 
 // Half a unit is the rounding to float32, a hundredth what the double inside may add.
 const bar = 0.51;
@@ -31,13 +39,18 @@ function worst(reference: Reference, which: number, got: ArrayLike<number>, effe
 }
 
 /** A draw comes from a sampler: how it moves with the parameters is the compiled kernel's, at the point given. */
-const isDraw = ({ function: name }: Reference): boolean => name === 'draw' || name === 'drawLog';
+const isDraw = ({ function: name }: Reference): boolean => name.startsWith('draw');
 
 function drawSlopes(reference: Reference): ArrayLike<number>[] {
   const compiled = catalogueOf(reference.kernel);
-  const operands = reference.columns.map((data, k) => {
+  const own = reference.columns.map((data, k) => {
     const name = reference.transforms[k];
     return { data, shape: [data.length], transform: name ? catalogueOf(name).index : -1, name };
+  });
+  const places = own.map((_, k) => placeOf(reference, k));
+  const operands = kernelArguments(reference, []).map((value, place) => {
+    const k = places.indexOf(place);
+    return k >= 0 ? own[k]! : { data: Float32Array.of(value), shape: [], transform: -1, name: undefined };
   });
   const run = (formula: number, at: number): Float32Array => {
     const own = at < 0 ? undefined : operands[at]!.name;
@@ -54,7 +67,7 @@ function drawSlopes(reference: Reference): ArrayLike<number>[] {
   const found = [run(compiled.index, -1)];
   for (const name of reference.partials) {
     const k = reference.arguments.indexOf(name);
-    found.push(run(compiled.partials[k]!, k));
+    found.push(run(compiled.partials[places[k]!]!, places[k]!));
   }
   return found;
 }

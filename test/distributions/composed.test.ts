@@ -3,7 +3,15 @@ import { describe, expect, it } from 'vitest';
 import { formulas } from '../../src/kernels/generated/formulas.js';
 import { composed } from '../../src/tensor/composed.js';
 import { entries } from '../families/entry.js';
-import { families, publicFunction, type Reference, references, titleOf } from './families.js';
+import {
+  families,
+  kernelArguments,
+  placeOf,
+  publicFunction,
+  type Reference,
+  references,
+  titleOf,
+} from './families.js';
 
 type Scalar = (...values: number[]) => number;
 type Kernels = Record<string, { value: Scalar; partials: readonly (Scalar | undefined)[] }>;
@@ -51,7 +59,8 @@ function moved(args: readonly number[], f: (args: readonly number[]) => number):
 function effect(reference: Reference, row: number, which: number): number {
   const kernel = kernels[reference.kernel]!;
   const partial = which === 0 ? -1 : reference.arguments.indexOf(reference.partials[which - 1]!);
-  const f = partial < 0 ? kernel.value : kernel.partials[partial]!;
+  const own = partial < 0 ? kernel.value : kernel.partials[placeOf(reference, partial)]!;
+  const f: Scalar = (...args) => own(...kernelArguments(reference, args));
   const raw = reference.columns.map((c) => c[row]!);
   const natural = (given: readonly number[]): number[] =>
     given.map((v, k) => {
@@ -89,7 +98,7 @@ function secondOf(first: (t: tf.Tensor) => tf.Tensor, at: tf.Tensor): ArrayLike<
 const missing = [
   'poisson.cdf',
   ...Object.entries(entries).flatMap(([family, { kernelOnly = [] }]) =>
-    [...kernelOnly, 'draw', 'drawLog'].map((name) => `${family}.${name}`),
+    [...kernelOnly, 'draw', 'drawLog', 'drawLogOdds'].map((name) => `${family}.${name}`),
   ),
 ];
 

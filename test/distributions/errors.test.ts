@@ -75,6 +75,15 @@ const domains: Record<string, Domain> = {
   logRate: { words: 'between -700 and 700', outside: 700, fix: 'runaway' },
   scale: { words: 'positive', outside: 0, fix: 'pass logScale if your network can produce negative values' },
   rate: { words: 'positive', outside: -1, fix: 'pass logRate if your network can produce negative values' },
+  shape: { words: 'positive', outside: -1, fix: 'pass logShape if your network can produce negative values' },
+  logShape: { words: 'between -700 and 700', outside: 700, fix: 'runaway' },
+  alpha: { words: 'positive', outside: -1, fix: 'pass logAlpha if your network can produce negative values' },
+  beta: { words: 'positive', outside: 0, fix: 'pass logBeta if your network can produce negative values' },
+  logAlpha: { words: 'between -700 and 700', outside: 700, fix: 'runaway' },
+  logBeta: { words: 'between -700 and 700', outside: -700, fix: 'runaway' },
+  concentration: { words: 'positive', outside: 0, fix: 'mend the value' },
+  degreesOfFreedom: { words: 'positive', outside: 0, fix: 'mend the value' },
+  dispersion: { words: 'positive', outside: 0, fix: 'mend the value' },
   logit: { words: 'finite', fix: '' },
   probability: {
     words: 'strictly between 0 and 1',
@@ -94,6 +103,12 @@ function domainOf(family: string, name: string) {
   if (family === 'exponential' && name === 'scale') return { words: 'positive', outside: 0, fix: rate };
   if ((family === 'exponential' || family === 'poisson') && name === 'mean') {
     return { words: 'positive', outside: -3, fix: rate };
+  }
+  if (family === 'beta' && name === 'mean') {
+    return { words: 'strictly between 0 and 1', outside: 1, fix: 'mend the value' };
+  }
+  if (family === 'gamma' && name === 'mean') {
+    return { words: 'positive', outside: 0, fix: 'mend the value' };
   }
   if (family === 'multivariateNormal' && name === 'mean') return { ...domain, example: '[0, 0]' };
   return domain.fix === 'runaway' ? { ...domain, fix: runaway } : domain;
@@ -188,7 +203,7 @@ describe.each(Object.entries(families))('%s', (family, { make, parametrizations 
       const ways = waysOf(name);
       const what =
         ways.length === 1 ? `${name} must be given` : `exactly one of ${ways.join(', ')} must be given`;
-      const text = `${family}: ${what}; got none; pass ${family}({ ${exampleOf()} })`;
+      const text = `${family}: ${what}; got none; pass ${family}({ ${exampleOf(options)} })`;
       expectError(() => make(rest), ParameterError, text);
       expectError(() => make({ ...options, [name]: undefined }), ParameterError, text);
     });
@@ -204,12 +219,28 @@ describe.each(Object.entries(families))('%s', (family, { make, parametrizations 
     return parametrizations.every((p) => name in p) ? [name] : ways;
   }
 
-  function exampleOf(): string {
-    return Object.keys(parametrizations[0]!).join(', ');
+  /** Parameters that are given in place of all of the first ones. */
+  function isJoint(options: Sample['parametrizations'][number]): boolean {
+    const names = Object.keys(options);
+    return (
+      names.length > 1 && !names.some((n) => n in parametrizations[0]!) && waysOf(names[0]!).length === 1
+    );
+  }
+
+  function exampleOf(options = parametrizations[0]!): string {
+    return Object.keys(isJoint(options) ? options : parametrizations[0]!).join(', ');
+  }
+
+  /** Every name, parameter by parameter. */
+  function knownNames(): string[] {
+    const first = parametrizations[0]!;
+    const own = parametrizations.filter((p) => !isJoint(p));
+    const ways = Object.keys(first).map((_, k) => [...new Set(own.map((p) => Object.keys(p)[k]!))]);
+    return [...new Set([...ways, ...parametrizations.filter(isJoint).map(Object.keys)].flat())];
   }
 
   it('refuses keys that it does not know', () => {
-    const known = [...new Set(parametrizations.flatMap((p) => Object.keys(p)))];
+    const known = knownNames();
     expectError(
       () => make({ ...parametrizations[0]!, sigma: 1 }),
       ParameterError,
@@ -223,7 +254,7 @@ describe.each(Object.entries(families))('%s', (family, { make, parametrizations 
     ['a number', 1, '1'],
     ['an array', [1], 'an array of 1'],
   ])('refuses %s in place of options', (_title, value, got) => {
-    const known = [...new Set(parametrizations.flatMap((p) => Object.keys(p)))];
+    const known = knownNames();
     expectError(
       () => make(value as never),
       ParameterError,

@@ -58,12 +58,15 @@ function spreadOut(
     const u = places[i]!;
     if (law.lower(x) <= 0.5) {
       const [a, b] = [low === Number.NEGATIVE_INFINITY ? 0 : law.lower(low), law.lower(high)];
-      return Math.log(2 * (a + (b - a) * u));
+      return centered(a + (b - a) * u);
     }
     const [a, b] = [law.upper(low), high === Number.POSITIVE_INFINITY ? 0 : law.upper(high)];
-    return -Math.log(2 * (a + (b - a) * u));
+    return -centered(a + (b - a) * u);
   });
 }
+
+/** A cell may hold the median, so that a share of one side may be above one half. */
+const centered = (share: number): number => (share <= 0.5 ? Math.log(2 * share) : -Math.log(2 * (1 - share)));
 
 /** The standard Laplace law, which the centered probabilities follow. */
 const identity = {

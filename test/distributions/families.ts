@@ -2,6 +2,7 @@ import { readdirSync, readFileSync } from 'node:fs';
 import { join } from 'node:path';
 import type * as tf from '@tensorflow/tfjs';
 import * as library from '../../src/index.js';
+import { catalogue } from '../../src/kernels/generated/catalogue.js';
 import { entries } from '../families/entry.js';
 
 const folder = join(import.meta.dirname, '../reference/families');
@@ -96,6 +97,32 @@ export function publicFunction(reference: Reference): (...tensors: tf.Tensor[]) 
     const kl = library.kl as (q: library.Distribution, p: library.Distribution) => tf.Tensor;
     return kl(q, make(family, other));
   };
+}
+
+/** Where each argument stands among the parameters of the kernel, which may read others that are fixed. */
+function places({ family, kernel, arguments: names }: Reference): {
+  all: (number | undefined)[];
+  given: number[];
+} {
+  const fixed = entries[family]?.fixed ?? {};
+  const plain = (name: string): string =>
+    name.startsWith('other') ? name[5]!.toLowerCase() + name.slice(6) : name;
+  const all = (catalogue as Record<string, { parameters: readonly string[] }>)[kernel]!.parameters.map(
+    (name) => fixed[plain(name)],
+  );
+  const open = all.flatMap((value, place) => (value === undefined ? [place] : []));
+  return { all, given: names.map((_, k) => open[k]!) };
+}
+
+/** The kernel's arguments: the given ones, and those that are the same for all members. */
+export function kernelArguments(reference: Reference, args: readonly number[]): number[] {
+  const { all, given } = places(reference);
+  return all.map((value, place) => value ?? args[given.indexOf(place)]!);
+}
+
+/** Where the argument of a reference stands among the kernel's. */
+export function placeOf(reference: Reference, argument: number): number {
+  return places(reference).given[argument]!;
 }
 
 /** `normal.logDensity(x, mean, sd)`. */

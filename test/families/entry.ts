@@ -36,6 +36,8 @@ export interface FamilyEntry {
   readonly roundings: number;
   /** Functions without a composed form. */
   readonly kernelOnly?: readonly string[];
+  /** Parameters that are the same for all members, which the family's kernels read too. */
+  readonly fixed?: Readonly<Record<string, number>>;
   /** What a parameter is when a function does not depend on it. */
   readonly resting?: Readonly<Record<string, number>>;
   /** What a parameter's errors ask for, a number that they refuse and the cure, where its name alone does not say. */

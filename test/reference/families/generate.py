@@ -26,6 +26,7 @@ from machinery import text
 HERE = os.path.dirname(os.path.abspath(__file__))
 OWN = sorted(name[7:-3] for name in os.listdir(HERE) if name.startswith('family_') and name.endswith('.py'))
 FUNCTIONS, SPREADS, DIGITS, JOINTS = dict(scalar.FUNCTIONS), dict(scalar.SPREADS), {}, {}
+SINGLE, FIRST_FORMS = set(), set()
 form = scalar.form
 
 
@@ -35,6 +36,10 @@ def load(family):
     FUNCTIONS[family], SPREADS[family] = module.FUNCTIONS, module.PARAMETERS
     points.POINTS[family] = module.POINTS
     scalar.FORMS.update({f'{family}.{name}': entry for name, entry in getattr(module, 'FORMS', {}).items()})
+    points.FAR.update({(family, name): logs for name, logs in getattr(module, 'FAR', {}).items()})
+    FIRST_FORMS.update((family, function) for function in getattr(module, 'FIRST_FORMS', ()))
+    if getattr(module, 'ONE_BY_ONE', False):
+        SINGLE.add(family)
     DIGITS[family] = getattr(module, 'DIGITS', {})
     JOINTS[family] = getattr(module, 'JOINTS', [])
 
@@ -55,9 +60,12 @@ def prefixed(name):
 
 
 def parametrizations(family, natural):
-    """Every choice of forms; both sides of a divergence take the same."""
+    """Every choice of forms, or those with one parameter in another form than the first; both sides of a divergence
+    take the same."""
     own = [n for n in natural if not n.startswith('other')]
     for chosen in itertools.product(*[SPREADS[family].get(n, [n]) for n in own]):
+        if family in SINGLE and sum(c != SPREADS[family].get(n, [n])[0] for c, n in zip(chosen, own)) > 1:
+            continue
         by_name = dict(zip(own, chosen))
         yield [prefixed(by_name[unprefixed(n)]) if n.startswith('other') else by_name[n] for n in natural]
 
@@ -76,7 +84,11 @@ def agreed(family, function, names, formula, args):
     with mp.workdps(many):
         high = value_and_slopes(family, names, formula, args)
     with mp.workdps(60):
-        for (a, _), (b, _) in zip(low, high):
+        for (a, _), (b, size) in zip(low, high):
+            size = max(size, abs(high[0][0]))
+            # Terms that cancel to the last digit leave a zero, and float32 ends at 1e-45.
+            if max(abs(a), abs(b)) < mpf(10) ** (20 - few) * size or max(abs(a), abs(b)) < mpf(10) ** -50:
+                continue
             # Far outside the doubles the exponent may take the digits, and only the sign is wanted.
             if abs(a) < mpf(10) ** -400 and abs(b) < mpf(10) ** -400:
                 continue
@@ -116,6 +128,8 @@ def plain(family):
     for function, (kernel, formula, natural, partials) in FUNCTIONS[family].items():
         natural = natural.split()
         for at, names in enumerate(parametrizations(family, natural)):
+            if at > 0 and (family, function) in FIRST_FORMS:
+                break
             # Behind a transform the formula is the same; fewer points show that the transform is applied.
             tail = function in ('survival', 'logCdf', 'logSurvival', 'upperQuantile')
             few = {'count': 45, 'corners': 25} if at > 0 and (family in DIGITS or tail) else {}

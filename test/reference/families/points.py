@@ -23,6 +23,9 @@ STEPS = [0.0, 1e-30, 1e-7, 0.5, -0.5, 0.7, 1.0, -1.0, 1.4, 1.5434046, -1.5434046
 # Logarithms of scales far beyond float32, up to where the double itself ends.
 FAR_LOGS = [0.0, 1e-30, -1e-7, 50.0, -50.0, 100.0, -100.0, 350.0, -350.0, 650.0, -650.0, 699.0, -699.0]
 
+# Other such logarithms, by family and name.
+FAR = {}
+
 
 def raw(family, name, natural):
     """The float32 in this form that stands nearest to a natural value, kept inside the form's domain."""
@@ -302,6 +305,6 @@ def points(family, function, names, count=220, corners=None):
     # Logarithms beyond what float32 could hold after the transform: beside the first adversarial points.
     for at, name in enumerate(plain):
         if name.startswith('log') and name != 'logit' and not (family == 'poisson' and function == 'cdf'):
-            for far, row in zip(FAR_LOGS * 3, rows[count:]):
+            for far, row in zip(FAR.get((family, name), FAR_LOGS) * 3, rows[count:]):
                 rows.append(row[:at] + (f32(2 * far if name == 'logVariance' else far),) + row[at + 1:])
     return list(dict.fromkeys(rows))
