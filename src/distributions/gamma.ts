@@ -59,6 +59,8 @@ const make = implicitRoute({
  * Log density: (shape − 1) log z − z − log Γ(shape) − log scale with z = x / scale for x > 0, −∞ below 0, in nats. By
  * mean and dispersion (the squared coefficient of variation): shape = 1 / dispersion, scale = mean · dispersion.
  * Shapes: the parameters broadcast from the right to `arrayShape`; points are scalars.
+ * Accuracy: by mean and dispersion the derivatives of tails and draws in the dispersion cancel beside the mean; at
+ * shape 1e6 and half a unit from a mean of 1e6 this costs 0.26 float32 units.
  * Gradient route: pathwise, an exact sampler with implicit derivatives; `drawLog` draws the logarithm, for shapes
  * so small that the draw underflows (36 % of draws at shape 0.01).
  *

@@ -4,7 +4,7 @@ import { registerMultivariateNormalKl } from './multivariateNormalKl.js';
 import { registerBetaKl } from './own/betaKl.js';
 import { registerExponentialCrossKl } from './own/exponentialCrossKl.js';
 import { registerExtremeKl } from './own/extremeKl.js';
-import { registerGammaKl } from './own/gammaKl.js';
+import { registerGammaKl, registerGammaKl } from './own/gammaKl.js';
 import { registerInverseGaussianKl } from './own/inverseGaussianKl.js';
 import { registerReciprocalKl } from './own/reciprocalKl.js';
 import { registerScaleKl } from './own/scaleKl.js';
@@ -27,6 +27,8 @@ export function ensureClosedForms(): void {
   registerGammaKl();
   registerBetaKl();
   registerInverseGaussianKl();
+  registerGammaKl();
+  registerBetaKl();
 }
 
 /** The closed form for a pair of distributions, or `undefined`. */

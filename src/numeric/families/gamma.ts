@@ -35,6 +35,8 @@ import { trigamma, trigammaSeries } from '../trigamma.js';
 // Below this z its logarithm is carried instead: with an extreme logScale z leaves the doubles.
 const TINY = 1e-290;
 const MOST = 1e290;
+// Beyond this z the upper tail is its leading term, and the continued fraction would leave the doubles.
+const HUGE = 1e100;
 
 /**
  * u − log(1 + u) with u = (x − mean) / mean: what a point far from the mean costs, per unit of shape. The difference
@@ -175,18 +177,21 @@ export function gammaLogSurvival(x: number, shape: number, scale: number): numbe
 export function gammaLogSurvival_x(x: number, shape: number, scale: number): number {
   if (!(x >= 0.0)) return 0.0;
   const z = x / scale;
+  if (z > HUGE) return -1.0 / scale;
   if (x === 0.0 || z >= TINY) return logGammaQ_x(shape, z) / scale;
   return gammaCdf_x(x, shape, scale) / Math.expm1(logPower(shape, logOf(x, scale)));
 }
 export function gammaLogSurvival_shape(x: number, shape: number, scale: number): number {
   if (!(x > 0.0)) return 0.0;
   const z = x / scale;
+  if (z > HUGE) return logOf(x, scale) - digamma(shape);
   if (z >= TINY) return logGammaQ_a(shape, z);
   return gammaCdf_shape(x, shape, scale) / Math.expm1(logPower(shape, logOf(x, scale)));
 }
 export function gammaLogSurvival_scale(x: number, shape: number, scale: number): number {
   if (!(x > 0.0)) return 0.0;
   const z = x / scale;
+  if (z > HUGE) return z / scale;
   if (z >= TINY) return -(z * logGammaQ_x(shape, z)) / scale;
   return gammaCdf_scale(x, shape, scale) / Math.expm1(logPower(shape, logOf(x, scale)));
 }
@@ -300,7 +305,7 @@ export function gammaDraw_x(_x: number, _shape: number, _scale: number): number 
 export function gammaDraw_shape(x: number, shape: number, scale: number): number {
   const z = x / scale;
   if (z < TINY && x > 0.0) return x * gammaLogDrawDerivative(logOf(x, scale), shape);
-  return scale * gammaDrawDerivative(z, shape);
+  return scale * (z > HUGE ? logOf(x, scale) - digamma(shape) : gammaDrawDerivative(z, shape));
 }
 export function gammaDraw_scale(x: number, _shape: number, scale: number): number {
   return x / scale;

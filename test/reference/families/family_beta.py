@@ -232,7 +232,7 @@ def made(family, function, lead):
     """The points in alpha and beta, carried to mean and concentration."""
     make, corners = POINTS[function]
     found = Draws(f'{family} {function} mean concentration').many(70, make) + corners[::3]
-    rows = [(*row[:-2], inside(row[-2] / (row[-2] + row[-1])), f32(row[-2] + row[-1])) for row in found]
+    rows = [(*map(f32, row[:-2]), inside(row[-2] / (row[-2] + row[-1])), f32(row[-2] + row[-1])) for row in found]
     return list(dict.fromkeys(row for row in rows if 1e-6 < row[-2] < 1 - 1e-6))
 
 
