@@ -71,6 +71,7 @@ export type { OneOf } from './distributions/oneOf.js';
 export { type Poisson, type PoissonOptions, poisson } from './distributions/poisson.js';
 export { type Product, type ProductBase, product } from './distributions/product.js';
 export { type QuantileDefinition, quantileFamily } from './distributions/quantileFamily.js';
+export { type StudentT, type StudentTOptions, studentT } from './distributions/studentT.js';
 export { type Uniform, type UniformOptions, uniform } from './distributions/uniform.js';
 export { type ClosedPartner, kl, type NoClosedKl, sampledKl } from './divergence/kl.js';
 export { hasClosedKl, registerKl } from './divergence/registerKl.js';

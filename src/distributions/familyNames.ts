@@ -11,5 +11,6 @@ export const familyNames: readonly string[] = [
   'multivariateNormal',
   'normal',
   'poisson',
+  'studentT',
   'uniform',
 ];

@@ -306,7 +306,7 @@ def points(family, function, names, count=220, corners=None):
     # Logarithms beyond what float32 could hold after the transform: beside the first adversarial points.
     for at, name in enumerate(plain):
         if name.startswith('log') and name != 'logit' and not (family == 'poisson' and function == 'cdf'):
-            low, high = LIMITS.get(f'{family}.{name}', (-1400, 1400))
+            low, high = LIMITS.get(f'{family}.{function}.{name}', LIMITS.get(f'{family}.{name}', (-1400, 1400)))
             for far, row in zip(FAR_LOGS * 3, rows[count:]):
                 far = max(low, min(high, far))
                 rows.append(row[:at] + (f32(2 * far if name == 'logVariance' else far),) + row[at + 1:])
