@@ -73,6 +73,7 @@ export { type Product, type ProductBase, product } from './distributions/product
 export { type QuantileDefinition, quantileFamily } from './distributions/quantileFamily.js';
 export { type StudentT, type StudentTOptions, studentT } from './distributions/studentT.js';
 export { type Uniform, type UniformOptions, uniform } from './distributions/uniform.js';
+export { type VonMises, type VonMisesOptions, vonMises } from './distributions/vonMises.js';
 export { type ClosedPartner, kl, type NoClosedKl, sampledKl } from './divergence/kl.js';
 export { hasClosedKl, registerKl } from './divergence/registerKl.js';
 export type { ClosedKlPairs, HasClosedKl } from './divergence/registry.js';

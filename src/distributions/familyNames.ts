@@ -13,4 +13,5 @@ export const familyNames: readonly string[] = [
   'poisson',
   'studentT',
   'uniform',
+  'vonMises',
 ];

@@ -2,6 +2,7 @@ import type { Distribution } from '../distributions/distribution.js';
 import { registerCategoricalKl } from './categoricalKl.js';
 import { registerMultivariateNormalKl } from './multivariateNormalKl.js';
 import { registerInverseGaussianKl } from './own/inverseGaussianKl.js';
+import { registerVonMisesKl } from './own/vonMisesKl.js';
 import { findKl, type KlFormula } from './registry.js';
 import { registerScalarKl } from './scalarKl.js';
 
@@ -15,6 +16,7 @@ export function ensureClosedForms(): void {
   registerCategoricalKl();
   registerMultivariateNormalKl();
   registerInverseGaussianKl();
+  registerVonMisesKl();
 }
 
 /** The closed form for a pair of distributions, or `undefined`. */

@@ -23,6 +23,7 @@ export interface ClosedKlPairs {
   'categorical|categorical': true;
   'poisson|poisson': true;
   'inverseGaussian|inverseGaussian': true;
+  'vonMises|vonMises': true;
   'multivariateNormal|multivariateNormal': true;
   'multivariateNormal|product<normal>': true;
   'product<normal>|multivariateNormal': true;

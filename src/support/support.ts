@@ -4,6 +4,7 @@ export type SupportName =
   | 'positive'
   | 'unitInterval'
   | 'interval'
+  | 'circle'
   | 'binary'
   | 'count'
   | 'categories'
@@ -26,6 +27,8 @@ export const positive: Support = { name: 'positive', pointRank: 0, discrete: fal
 export const unitInterval: Support = { name: 'unitInterval', pointRank: 0, discrete: false };
 /** An interval that the parameters set. */
 export const interval: Support = { name: 'interval', pointRank: 0, discrete: false };
+/** The angles from −π to π, whose ends are one point; functions of an angle have period 2π. */
+export const circle: Support = { name: 'circle', pointRank: 0, discrete: false };
 /** Zero and one. */
 export const binary: Support = { name: 'binary', pointRank: 0, discrete: true };
 /** The whole numbers from zero. */

@@ -11,6 +11,7 @@ const outsidePoints: Readonly<Record<string, readonly number[]>> = {
   interval: far,
   positive: [...negative, Number.POSITIVE_INFINITY],
   unitInterval: [...negative, 1 + 2 ** -23, 2, 3e38, Number.POSITIVE_INFINITY],
+  circle: [Number.NEGATIVE_INFINITY, Number.POSITIVE_INFINITY],
   binary: [...negative, ...broken, 2],
   count: [...negative, ...broken],
   categories: [...negative, ...broken, 3e38],
