@@ -15,6 +15,7 @@ const levels = [0, 0.001, 0.01, 0.1, 0.25, 0.5, 0.75, 0.9, 0.99, 0.999, 1];
 const ends: Readonly<Record<string, readonly [number, number]>> = {
   positive: [0, Number.POSITIVE_INFINITY],
   unitInterval: [0, 1],
+  circle: [-Math.PI, Math.PI],
 };
 
 /**

@@ -42,7 +42,7 @@ const domains: Record<ParameterDomain, Domain> = {
 };
 
 /** Scalar sets that a user's family can live on. */
-export type ScalarSupport = Exclude<SupportName, 'categories' | 'realVector'>;
+export type ScalarSupport = Exclude<SupportName, 'circle' | 'categories' | 'realVector'>;
 
 const supports: Record<ScalarSupport, Support> = {
   real,

@@ -24,7 +24,9 @@ export const familyNames: readonly string[] = [
   'poisson',
   'rayleigh',
   'reciprocal',
+  'studentT',
   'triangular',
   'uniform',
+  'vonMises',
   'weibull',
 ];

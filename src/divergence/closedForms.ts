@@ -4,10 +4,11 @@ import { registerMultivariateNormalKl } from './multivariateNormalKl.js';
 import { registerBetaKl } from './own/betaKl.js';
 import { registerExponentialCrossKl } from './own/exponentialCrossKl.js';
 import { registerExtremeKl } from './own/extremeKl.js';
-import { registerGammaKl, registerGammaKl } from './own/gammaKl.js';
+import { registerGammaKl } from './own/gammaKl.js';
 import { registerInverseGaussianKl } from './own/inverseGaussianKl.js';
 import { registerReciprocalKl } from './own/reciprocalKl.js';
 import { registerScaleKl } from './own/scaleKl.js';
+import { registerVonMisesKl } from './own/vonMisesKl.js';
 import { findKl, type KlFormula } from './registry.js';
 import { registerScalarKl } from './scalarKl.js';
 
@@ -27,8 +28,7 @@ export function ensureClosedForms(): void {
   registerGammaKl();
   registerBetaKl();
   registerInverseGaussianKl();
-  registerGammaKl();
-  registerBetaKl();
+  registerVonMisesKl();
 }
 
 /** The closed form for a pair of distributions, or `undefined`. */

@@ -50,6 +50,7 @@ export interface ClosedKlPairs {
   'exponential|halfNormal': true;
   'pareto|exponential': true;
   'inverseGaussian|inverseGaussian': true;
+  'vonMises|vonMises': true;
   'multivariateNormal|multivariateNormal': true;
   'multivariateNormal|product<normal>': true;
   'product<normal>|multivariateNormal': true;

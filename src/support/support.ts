@@ -5,6 +5,7 @@ export type SupportName =
   | 'unitInterval'
   | 'interval'
   | 'ray'
+  | 'circle'
   | 'binary'
   | 'count'
   | 'categories'
@@ -29,6 +30,8 @@ export const unitInterval: Support = { name: 'unitInterval', pointRank: 0, discr
 export const interval: Support = { name: 'interval', pointRank: 0, discrete: false };
 /** The numbers from one that the parameters set. */
 export const ray: Support = { name: 'ray', pointRank: 0, discrete: false };
+/** The angles from −π to π, whose ends are one point; functions of an angle have period 2π. */
+export const circle: Support = { name: 'circle', pointRank: 0, discrete: false };
 /** Zero and one. */
 export const binary: Support = { name: 'binary', pointRank: 0, discrete: true };
 /** The whole numbers from zero. */

@@ -18,7 +18,8 @@ export function drawsFollow(subject: Subject): void {
   const broken = draws.find((x) => Number.isNaN(x));
   if (broken !== undefined) throw new Violation('draws must be numbers', broken, 'a number', look);
   if (subject.d.support.discrete) followMasses(subject, draws);
-  else if (subject.d.cdf) followCdf(subject, draws);
+  // The distribution function of an angle is not measured from where its numbers begin.
+  else if (subject.d.cdf && subject.d.support.name !== 'circle') followCdf(subject, draws);
   else followDensity(subject, draws);
 }
 
@@ -96,6 +97,7 @@ const inside: Readonly<Record<string, (x: number) => boolean>> = {
   ray: Number.isFinite,
   positive: (x) => x >= 0 && x < Number.POSITIVE_INFINITY,
   unitInterval: (x) => x >= 0 && x <= 1,
+  circle: (x) => x >= -Math.PI && x <= Math.PI,
   binary: (x) => x === 0 || x === 1,
   count: (x) => Number.isInteger(x) && x >= 0,
   categories: (x) => Number.isInteger(x) && x >= 0,

@@ -22,6 +22,10 @@ export function moments(subject: Subject): void {
     );
   }
   if (!d.mean && !d.variance) return;
+  if (d.support.name === 'circle') {
+    circularMoments(subject);
+    return;
+  }
   const centre = region?.middle ?? 0;
   const scale = region?.spread ?? 1;
   const shift = expectation(subject, (x) => (x - centre) / scale, 1e-7, region) * scale;
@@ -45,4 +49,22 @@ export function moments(subject: Subject): void {
       'the variance must be that of the density',
       look('variance'),
     );
+}
+
+/** Mean direction and circular variance: the argument, and one minus the length, of the mean of exp(ix). */
+function circularMoments(subject: Subject): void {
+  const { d } = subject;
+  const region = regionOf(subject);
+  const cosine = expectation(subject, Math.cos, 1e-7, region);
+  const sine = expectation(subject, Math.sin, 1e-7, region);
+  const length = Math.hypot(cosine, sine);
+  if (d.mean) {
+    const mean = numbers(() => d.mean!())[0]!;
+    const miss = Math.sin(mean - Math.atan2(sine, cosine));
+    requireClose(miss * length, 0, 1e-4, 'the mean direction must be that of the density', 'mean');
+  }
+  if (d.variance) {
+    const variance = numbers(() => d.variance!())[0]!;
+    requireClose(variance, 1 - length, 1e-4, 'the circular variance must be that of the density', 'variance');
+  }
 }

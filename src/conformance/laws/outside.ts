@@ -12,6 +12,7 @@ const outsidePoints: Readonly<Record<string, readonly number[]>> = {
   ray: [-3e38, Number.NEGATIVE_INFINITY, Number.POSITIVE_INFINITY],
   positive: [...negative, Number.POSITIVE_INFINITY],
   unitInterval: [...negative, 1 + 2 ** -23, 2, 3e38, Number.POSITIVE_INFINITY],
+  circle: [Number.NEGATIVE_INFINITY, Number.POSITIVE_INFINITY],
   binary: [...negative, ...broken, 2],
   count: [...negative, ...broken],
   categories: [...negative, ...broken, 3e38],

@@ -311,7 +311,7 @@ def points(family, function, names, count=220, corners=None):
         if name.startswith('log') and name != 'logit' and not (family == 'poisson' and function == 'cdf'):
             # Shapes are held to 1e-6 … 1e6.
             held = [0.0, 1e-7, -1e-7, 13.5, -13.5] if name == 'logShape' else FAR_LOGS
-            low, high = LIMITS.get(f'{family}.{name}', (-1400, 1400))
+            low, high = LIMITS.get(f'{family}.{function}.{name}', LIMITS.get(f'{family}.{name}', (-1400, 1400)))
             for far, row in zip(FAR.get((family, name), held) * 3, rows[count:]):
                 far = max(low, min(high, far))
                 rows.append(row[:at] + (f32(2 * far if name == 'logVariance' else far),) + row[at + 1:])
