@@ -86,14 +86,7 @@ export { type Rayleigh, type RayleighOptions, rayleigh } from './distributions/r
 export { type Reciprocal, type ReciprocalOptions, reciprocal } from './distributions/reciprocal.js';
 export { type StudentT, type StudentTOptions, studentT } from './distributions/studentT.js';
 export { type Triangular, type TriangularOptions, triangular } from './distributions/triangular.js';
-export {
-  type Uniform,
-  type Uniform,
-  type UniformOptions,
-  type UniformOptions,
-  uniform,
-  uniform,
-} from './distributions/uniform.js';
+export { type Uniform, type UniformOptions, uniform } from './distributions/uniform.js';
 export { type VonMises, type VonMisesOptions, vonMises } from './distributions/vonMises.js';
 export { type Weibull, type WeibullOptions, weibull } from './distributions/weibull.js';
 export { type ClosedPartner, kl, type NoClosedKl, sampledKl } from './divergence/kl.js';

@@ -18,6 +18,8 @@ export function gammaRemainder(a: number, b: number): number {
 
 /** The same with d = b − a given, where the two are rounded sums. */
 export function gammaRemainderOf(a: number, b: number, d: number): number {
+  // Outside the domain the recurrence would climb for ever.
+  if (!(a > 0.0 && b > 0.0)) return NaN;
   const h = d / a;
   if (!(Math.abs(h) <= 0.5)) {
     const half = h < -0.5 ? h - (Math.log(b) - Math.log(a)) : 0.0 - log1pmx(h);
