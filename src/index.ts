@@ -13,8 +13,18 @@ export type {
   Pathwise,
   UnknownLatents,
 } from './bounds/pairing.js';
+export {
+  type AsymmetricLaplace,
+  type AsymmetricLaplaceOptions,
+  asymmetricLaplace,
+} from './distributions/asymmetricLaplace.js';
 export { type Bernoulli, type BernoulliOptions, bernoulli } from './distributions/bernoulli.js';
 export { type Categorical, type CategoricalOptions, categorical } from './distributions/categorical.js';
+export {
+  type ContinuousBernoulli,
+  type ContinuousBernoulliOptions,
+  continuousBernoulli,
+} from './distributions/continuousBernoulli.js';
 export type {
   Distribution,
   HasCdf,
@@ -47,6 +57,7 @@ export type {
 export type { FamilyFormula, NumberFormula } from './distributions/familyFormula.js';
 export { type Gumbel, type GumbelOptions, gumbel } from './distributions/gumbel.js';
 export { type ImplicitDefinition, implicitFamily } from './distributions/implicitFamily.js';
+export { type Kumaraswamy, type KumaraswamyOptions, kumaraswamy } from './distributions/kumaraswamy.js';
 export { type Laplace, type LaplaceOptions, laplace } from './distributions/laplace.js';
 export type { LocationScaleOptions } from './distributions/locationScale.js';
 export {
@@ -55,6 +66,7 @@ export {
   type StandardFormula,
 } from './distributions/locationScaleFamily.js';
 export { type Logistic, type LogisticOptions, logistic } from './distributions/logistic.js';
+export { type LogitNormal, type LogitNormalOptions, logitNormal } from './distributions/logitNormal.js';
 export { type LogNormal, type LogNormalOptions, logNormal } from './distributions/logNormal.js';
 export {
   type MultivariateNormal,

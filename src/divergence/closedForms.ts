@@ -1,6 +1,8 @@
 import type { Distribution } from '../distributions/distribution.js';
 import { registerCategoricalKl } from './categoricalKl.js';
 import { registerMultivariateNormalKl } from './multivariateNormalKl.js';
+import { registerAsymmetricLaplaceKl } from './own/asymmetricLaplaceKl.js';
+import { registerContinuousBernoulliKl } from './own/continuousBernoulliKl.js';
 import { registerReciprocalKl } from './own/reciprocalKl.js';
 import { findKl, type KlFormula } from './registry.js';
 import { registerScalarKl } from './scalarKl.js';
@@ -13,6 +15,8 @@ export function ensureClosedForms(): void {
   ready = true;
   registerScalarKl();
   registerReciprocalKl();
+  registerContinuousBernoulliKl();
+  registerAsymmetricLaplaceKl();
   registerCategoricalKl();
   registerMultivariateNormalKl();
 }

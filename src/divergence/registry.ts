@@ -20,6 +20,9 @@ export interface ClosedKlPairs {
   'uniform|uniform': true;
   'exponential|exponential': true;
   'bernoulli|bernoulli': true;
+  'asymmetricLaplace|asymmetricLaplace': true;
+  'continuousBernoulli|continuousBernoulli': true;
+  'logitNormal|logitNormal': true;
   'reciprocal|reciprocal': true;
   'categorical|categorical': true;
   'poisson|poisson': true;

@@ -75,6 +75,8 @@ export function registerScalarKl(): void {
   addScalarKl('normal|normal', normalKl);
   // The divergence does not change under the exponential map.
   addScalarKl('logNormal|logNormal', normalKl);
+  // Nor under the logistic one.
+  addScalarKl('logitNormal|logitNormal', normalKl);
   addScalarKl(
     'laplace|laplace',
     kernel('laplaceKl', (l, s, m, t) => composedLaplaceKl(l!, s!, m!, t!)),

@@ -1,7 +1,7 @@
 import * as tf from '@tensorflow/tfjs';
 import { erf, erfcx } from '../numeric/errorFunction.js';
 import { chebyshevPolynomial, polynomial } from './chebyshev.js';
-import { withSlope } from './composedMath.js';
+import { when, withSlope } from './composedMath.js';
 
 // The normal distribution function and its kin from tensor operations, for `composed` and for accelerators.
 // tfjs's erf is an approximation of absolute accuracy 1e-7, with nothing left in either tail or near zero.
@@ -101,8 +101,18 @@ function logNormalCdfValue(x: tf.Tensor): tf.Tensor {
 function composedInverseMills(x: tf.Tensor): tf.Tensor {
   return withSlope(x, inverseMillsValue, (v) => {
     const h = composedInverseMills(v);
-    return tf.neg(tf.mul(h, tf.add(v, h)));
+    return tf.neg(tf.mul(h, when(tf.less(v, -7), farExcess(v), tf.add(v, h))));
   });
+}
+
+/** x + φ / Φ far below zero, where the sum cancels: −1/x + 2/x³ − 10/x⁵ + 74/x⁷ − …, from DLMF 7.12.1. */
+function farExcess(x: tf.Tensor): tf.Tensor {
+  const r = tf.div(1, tf.minimum(x, -7));
+  const series = [-1, 2, -10, 74, -706].reduceRight<tf.Tensor>(
+    (sum, c) => tf.add(c, tf.mul(tf.square(r), sum)),
+    tf.zerosLike(x),
+  );
+  return tf.mul(r, series);
 }
 
 function inverseMillsValue(x: tf.Tensor): tf.Tensor {

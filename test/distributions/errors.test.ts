@@ -209,7 +209,8 @@ describe.each(Object.entries(families))('%s', (family, { make, parametrizations 
   }
 
   it('refuses keys that it does not know', () => {
-    const known = [...new Set(parametrizations.flatMap((p) => Object.keys(p)))];
+    const ways = Object.keys(parametrizations[0]!).flatMap(waysOf);
+    const known = [...new Set([...ways, ...parametrizations.flatMap((p) => Object.keys(p))])];
     expectError(
       () => make({ ...parametrizations[0]!, sigma: 1 }),
       ParameterError,
