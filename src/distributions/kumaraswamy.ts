@@ -3,6 +3,7 @@ import { unitInterval } from '../support/support.js';
 import type { ParameterValue } from '../tensor/checks.js';
 import { composedExp, composedLog1p, when } from '../tensor/composedMath.js';
 import { composedExpm1, composedLog1mexp } from '../tensor/composedRemainders.js';
+import { detach } from '../tensor/detach.js';
 import { noComposedForm } from '../tensor/noComposedForm.js';
 import type { Distribution, HasMoments, HasQuantiles, HasTails } from './distribution.js';
 import { aboveZero } from './parameters.js';
@@ -61,14 +62,15 @@ const make = quantileRoute({
       0,
       0,
     )(given!, alpha!, beta!);
-    const x = tf.add(given!, tf.zerosLike(inside));
+    const x = detach(tf.add(given!, tf.zerosLike(inside)));
     const end = (at: number, shape: tf.Tensor, other: tf.Tensor): tf.Tensor => {
-      const s = tf.add(shape, tf.zerosLike(inside));
+      const s = tf.add(shape, tf.zerosLike(x));
       const infinite = tf.mul(tf.sign(tf.sub(1, s)), Number.POSITIVE_INFINITY);
       const limit = tf.where(tf.equal(s, 1), tf.add(tf.log(other), tf.zerosLike(s)), infinite);
       return tf.where(tf.equal(x, at), limit, tf.fill(x.shape, Number.NEGATIVE_INFINITY));
     };
-    const atEnds = tf.maximum(end(0, alpha!, beta!), end(1, beta!, alpha!));
+    const [a, b] = [detach(alpha!), detach(beta!)];
+    const atEnds = tf.maximum(end(0, a, b), end(1, b, a));
     const within = tf.logicalAnd(tf.greater(x, 0), tf.less(x, 1));
     return when(within, inside, atEnds);
   },
@@ -86,8 +88,10 @@ const make = quantileRoute({
       const beta = when(peaked, tf.add(b!, zero), tf.add(zero, 2));
       const grown = tf.div(tf.mul(alpha, tf.sub(beta, 1)), tf.sub(alpha, 1));
       const peak = composedExp(tf.neg(tf.div(composedLog1p(grown), alpha)));
-      const unclear = tf.logicalOr(tf.equal(a!, b!), tf.logicalAnd(tf.less(a!, 1), tf.less(b!, 1)));
-      const upper = tf.cast(tf.logicalAnd(tf.greaterEqual(a!, 1), tf.lessEqual(b!, 1)), 'float32');
+      // Elsewhere the mode moves in steps.
+      const [c, d] = [detach(a!), detach(b!)];
+      const unclear = tf.logicalOr(tf.equal(c, d), tf.logicalAnd(tf.less(c, 1), tf.less(d, 1)));
+      const upper = tf.cast(tf.logicalAnd(tf.greaterEqual(c, 1), tf.lessEqual(d, 1)), 'float32');
       return when(peaked, peak, tf.where(unclear, tf.fill(zero.shape, Number.NaN), upper));
     },
     entropy: noComposedForm('kumaraswamyEntropy'),
