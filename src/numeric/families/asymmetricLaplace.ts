@@ -196,7 +196,11 @@ let w: number = 0.5;
 let y: number = 0.0;
 let above: number = 0.0;
 let below: number = 0.0;
+let rho: number = 1.0;
 let sigma: number = 1.0;
+let kSlope: number = 0.0;
+let jSlope: number = 0.0;
+let close: boolean = true;
 let mirrored: boolean = false;
 let gone: number = 0.0;
 let bend: number = 0.0;
@@ -218,8 +222,12 @@ function read(l: number, s: number, a: number, m: number, t: number, b: number):
   const down = relativeExcess(s, t, a, b);
   above = mirrored ? down : up;
   below = mirrored ? up : down;
-  // Not 1 + below: it may be far below what that can tell from zero.
+  // Not 1 + above and 1 + below: they may be far below what that can tell from zero.
   sigma = Math.min(s / t, 1.0e250) * (k / j);
+  rho = Math.min(s / t, 1.0e250) * (j / k);
+  kSlope = mirrored ? -widthSlope(a) : widthSlope(a);
+  jSlope = mirrored ? -widthSlope(b) : widthSlope(b);
+  close = y < 1.0 && Math.abs(above) < 0.5 && Math.abs(below) < 0.5;
   gone = Math.expm1(-y);
   bend = exponentialRemainder(-y);
   // exp(−y) (1 + y) − 1.
@@ -260,11 +268,15 @@ export function asymmetricLaplaceKl(
   return sides + square * w * excess(below, scales - tilt) + w * (far + (sigma * bend) / square);
 }
 
-function slopeInLocation(s: number): number {
+function slopeInLocation(s: number, t: number): number {
   const square = k * k;
-  const near = below - above * (1.0 + gone) - gone;
-  const slope = (y > 1.0 ? sigma - (1.0 + above) * Math.exp(-y) : near) - (sigma * gone) / square;
-  return ((mirrored ? -k : k) * w * slope) / s;
+  const sign = mirrored ? -k * w : k * w;
+  // σ − ρ exp(−y) − σ (exp(−y) − 1) / κ²; the part of ρ that y takes is written apart where y is small.
+  if (close) return (sign * (below - above - rho * gone - (sigma * gone) / square)) / s;
+  const up = j / k;
+  const down = k / j;
+  const apart = y > 1.0 ? down - up * Math.exp(-y) : down - up - up * gone;
+  return (sign * (apart - (down * gone) / square)) / t;
 }
 export function asymmetricLaplaceKl_location(
   location: number,
@@ -275,7 +287,7 @@ export function asymmetricLaplaceKl_location(
   otherAsymmetry: number,
 ): number {
   read(location, scale, asymmetry, otherLocation, otherScale, otherAsymmetry);
-  return -slopeInLocation(scale);
+  return -slopeInLocation(scale, otherScale);
 }
 export function asymmetricLaplaceKl_otherLocation(
   location: number,
@@ -286,7 +298,7 @@ export function asymmetricLaplaceKl_otherLocation(
   otherAsymmetry: number,
 ): number {
   read(location, scale, asymmetry, otherLocation, otherScale, otherAsymmetry);
-  return slopeInLocation(scale);
+  return slopeInLocation(scale, otherScale);
 }
 export function asymmetricLaplaceKl_scale(
   location: number,
@@ -325,10 +337,21 @@ export function asymmetricLaplaceKl_asymmetry(
   const square = k * k;
   const half = 2.0 * square * w;
   const shift = turn + half * gone;
-  const slope =
-    below * square * w * (1.0 + 2.0 * w) -
-    w * (above * (1.0 + turn + half * (1.0 + gone)) + shift) -
-    (w / square) * sigma * shift;
+  let slope = 0.0;
+  if (close) {
+    slope =
+      below * square * w * (1.0 + 2.0 * w) -
+      w * (above * (1.0 + turn + half * (1.0 + gone)) + shift) -
+      (w / square) * sigma * shift;
+  } else {
+    // Term by term: with rates far from q's what is left of the others is the slope of log(κ + 1 / κ).
+    const sides = sigma * square * (1.0 + 2.0 * w);
+    const apart =
+      y > 1.0
+        ? sides - rho * Math.exp(-y) * (1.0 + half + y)
+        : sides - rho * (1.0 + half) - rho * (gone * (1.0 + half + y) + y);
+    slope = w * (apart - (sigma * shift) / square) - kSlope;
+  }
   return (mirrored ? -slope : slope) / asymmetry;
 }
 export function asymmetricLaplaceKl_otherAsymmetry(
@@ -341,15 +364,17 @@ export function asymmetricLaplaceKl_otherAsymmetry(
 ): number {
   read(location, scale, asymmetry, otherLocation, otherScale, otherAsymmetry);
   const square = k * k;
-  const other = 1.0 / (1.0 + j * j);
-  const difference = mirrored
-    ? (2.0 * (asymmetry - otherAsymmetry) * (asymmetry + otherAsymmetry)) /
-      (asymmetry * asymmetry * otherAsymmetry * otherAsymmetry)
-    : 2.0 * (j - k) * (j + k);
-  const slope =
-    difference * w * other -
-    square * w * below +
-    w * (above * (1.0 + gone) + gone) -
-    w * sigma * (y + bend / square);
+  const taken = sigma * (y + bend / square);
+  let slope = 0.0;
+  if (close) {
+    const difference = mirrored
+      ? (2.0 * (asymmetry - otherAsymmetry) * (asymmetry + otherAsymmetry)) /
+        (asymmetry * asymmetry * otherAsymmetry * otherAsymmetry)
+      : 2.0 * (j - k) * (j + k);
+    slope = (w * difference) / (1.0 + j * j) + w * (above - square * below + rho * gone - taken);
+  } else {
+    const apart = y > 1.0 ? rho * Math.exp(-y) - square * sigma : rho - square * sigma + rho * gone;
+    slope = w * (apart - taken) + jSlope;
+  }
   return (mirrored ? -slope : slope) / otherAsymmetry;
 }
