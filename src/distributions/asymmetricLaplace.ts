@@ -118,6 +118,7 @@ const make = locationScaleRoute({
  * κ = asymmetry, in nats; κ = 1 is the Laplace distribution, and location is the quantile of κ² / (1 + κ²).
  * Shapes: the parameters broadcast from the right to `arrayShape`; points are scalars.
  * Gradient route: pathwise, draw = quantile of a uniform number.
+ * The closed divergence of two of these has no form in tensor operations: call it outside `composed`.
  *
  * @param options - `location`, one of `scale`, `logScale`, and `asymmetry`
  * @throws ParameterError when a parameter is missing, given twice, not finite, the scale or the asymmetry is not

@@ -128,6 +128,7 @@ const make = quantileRoute({
  * Log density: l x − log((exp(l) − 1) / l) for 0 ≤ x ≤ 1 with l = logit, −∞ outside, in nats; uniform at l = 0.
  * Shapes: the parameter's shape is `arrayShape`; points are scalars.
  * Gradient route: pathwise, draw = log(1 + u (exp(l) − 1)) / l with u uniform, never 0 or 1.
+ * The closed divergence of two of these has no form in tensor operations: call it outside `composed`.
  *
  * @param options - one of `logit`, `probability`; the probability is 1 / (1 + exp(−logit)), which is not the mean
  * @throws ParameterError when neither or both are given, a logit is not finite, or a probability is not strictly

@@ -111,7 +111,8 @@ const make = quantileRoute({
  * Log density: log alpha + log beta + (alpha − 1) log x + (beta − 1) log(1 − x^alpha) for 0 < x < 1, its limits at
  * 0 and 1, −∞ outside, in nats. Shapes: the parameters broadcast from the right to `arrayShape`; points are scalars.
  * Gradient route: pathwise, draw = (1 − exp(−noise / beta))^(1 / alpha), never 0 or 1. The mode is NaN where the
- * density rises towards both ends or is flat. Two of these have no closed divergence: the mean of log(1 − x^alpha)
+ * density rises towards both ends or is flat. Mean, variance and entropy have no form in tensor operations: call them
+ * outside `composed`. Two of these have no closed divergence: the mean of log(1 − x^alpha)
  * for another alpha is an infinite series; use `sampledKl`.
  *
  * @param options - `alpha` and `beta`: the powers of x and of 1 − x^alpha
