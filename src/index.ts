@@ -13,11 +13,21 @@ export type {
   Pathwise,
   UnknownLatents,
 } from './bounds/pairing.js';
+export {
+  type AsymmetricLaplace,
+  type AsymmetricLaplaceOptions,
+  asymmetricLaplace,
+} from './distributions/asymmetricLaplace.js';
 export { type Bernoulli, type BernoulliOptions, bernoulli } from './distributions/bernoulli.js';
 export { type Beta, type BetaOptions, beta } from './distributions/beta.js';
 export { type Categorical, type CategoricalOptions, categorical } from './distributions/categorical.js';
 export { type Cauchy, type CauchyOptions, cauchy } from './distributions/cauchy.js';
 export { type ChiSquared, type ChiSquaredOptions, chiSquared } from './distributions/chiSquared.js';
+export {
+  type ContinuousBernoulli,
+  type ContinuousBernoulliOptions,
+  continuousBernoulli,
+} from './distributions/continuousBernoulli.js';
 export type {
   Distribution,
   HasCdf,
@@ -60,6 +70,7 @@ export {
   type InverseGaussianOptions,
   inverseGaussian,
 } from './distributions/inverseGaussian.js';
+export { type Kumaraswamy, type KumaraswamyOptions, kumaraswamy } from './distributions/kumaraswamy.js';
 export { type Laplace, type LaplaceOptions, laplace } from './distributions/laplace.js';
 export type { LocationScaleOptions } from './distributions/locationScale.js';
 export {

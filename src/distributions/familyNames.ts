@@ -1,10 +1,12 @@
 /** Names of the library's own families, which a user's family may not take: divergences are found by name. */
 export const familyNames: readonly string[] = [
+  'asymmetricLaplace',
   'bernoulli',
   'beta',
   'categorical',
   'cauchy',
   'chiSquared',
+  'continuousBernoulli',
   'exponential',
   'gamma',
   'gompertz',
@@ -13,6 +15,7 @@ export const familyNames: readonly string[] = [
   'halfNormal',
   'inverseGamma',
   'inverseGaussian',
+  'kumaraswamy',
   'laplace',
   'logistic',
   'logitNormal',

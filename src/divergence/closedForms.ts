@@ -1,7 +1,9 @@
 import type { Distribution } from '../distributions/distribution.js';
 import { registerCategoricalKl } from './categoricalKl.js';
 import { registerMultivariateNormalKl } from './multivariateNormalKl.js';
+import { registerAsymmetricLaplaceKl } from './own/asymmetricLaplaceKl.js';
 import { registerBetaKl } from './own/betaKl.js';
+import { registerContinuousBernoulliKl } from './own/continuousBernoulliKl.js';
 import { registerExponentialCrossKl } from './own/exponentialCrossKl.js';
 import { registerExtremeKl } from './own/extremeKl.js';
 import { registerGammaKl } from './own/gammaKl.js';
@@ -20,6 +22,8 @@ export function ensureClosedForms(): void {
   ready = true;
   registerScalarKl();
   registerReciprocalKl();
+  registerContinuousBernoulliKl();
+  registerAsymmetricLaplaceKl();
   registerCategoricalKl();
   registerMultivariateNormalKl();
   registerScaleKl();

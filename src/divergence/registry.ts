@@ -31,6 +31,8 @@ export interface ClosedKlPairs {
   'exponential|chiSquared': true;
   'inverseGamma|inverseGamma': true;
   'bernoulli|bernoulli': true;
+  'asymmetricLaplace|asymmetricLaplace': true;
+  'continuousBernoulli|continuousBernoulli': true;
   'logitNormal|logitNormal': true;
   'reciprocal|reciprocal': true;
   'categorical|categorical': true;

@@ -244,12 +244,13 @@ describe.each(Object.entries(families))('%s', (family, { make, parametrizations 
     return Object.keys(isJoint(options) ? options : parametrizations[0]!).join(', ');
   }
 
-  /** Every name, parameter by parameter. */
+  /** Every name: a complete choice first, then the other ways to give each parameter. */
   function knownNames(): string[] {
     const first = parametrizations[0]!;
     const own = parametrizations.filter((p) => !isJoint(p));
     const ways = Object.keys(first).map((_, k) => [...new Set(own.map((p) => Object.keys(p)[k]!))]);
-    return [...new Set([...ways, ...parametrizations.filter(isJoint).map(Object.keys)].flat())];
+    const joints = parametrizations.filter(isJoint).map(Object.keys);
+    return [...new Set([Object.keys(first), ...ways, ...joints].flat())];
   }
 
   it('refuses keys that it does not know', () => {
