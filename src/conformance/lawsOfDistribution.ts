@@ -56,7 +56,7 @@ export interface DistributionLawOptions extends LawOptions {
  * const laws = lawsOfDistribution(logistic, fc.record({ location, scale }), { invalid: [{ location: 0, scale: 0 }] });
  * for (const { check } of laws) await check();
  * console.log(laws.length, laws[0]!.name);
- * // 17 logistic: the same stream gives the same bits
+ * // 21 logistic: the same stream gives the same bits
  * ```
  */
 export function lawsOfDistribution<Options extends object>(

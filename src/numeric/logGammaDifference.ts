@@ -16,6 +16,8 @@ import { log1pmx } from './log1pmx.js';
  * ```
  */
 export function logGammaDifference(b: number, a: number): number {
+  // Outside the domain the recurrence would climb for ever.
+  if (!(b >= 0.0 && a >= -b)) return NaN;
   let sum = 0.0;
   let x = b;
   while (x < 8.0) {

