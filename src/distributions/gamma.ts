@@ -45,6 +45,10 @@ const make = implicitRoute({
         shape: (_mean, dispersion) => tf.div(1, dispersion!),
         scale: (mean, dispersion) => tf.mul(mean!, dispersion!),
       },
+      composed: {
+        gammaMeanDispersionMean: (mean, dispersion) => tf.add(mean!, tf.mul(0, dispersion!)),
+        gammaMeanDispersionMode: (mean, dispersion) => tf.mul(mean!, tf.relu(tf.sub(1, dispersion!))),
+      },
     },
   ],
   ...gammaForms,

@@ -15,6 +15,8 @@ export interface Joint {
   readonly parameters: ParameterForms;
   /** The family's own parameters from these, composed; the kernels are named `<kernels><Parameter>`. */
   readonly gives: Readonly<Record<string, (...values: tf.Tensor[]) => tf.Tensor>>;
+  /** Composed forms, by kernel, where going through the family's own parameters would lose digits. */
+  readonly composed?: Readonly<Record<string, (...values: tf.Tensor[]) => tf.Tensor>>;
 }
 
 const capital = (name: string): string => name[0]!.toUpperCase() + name.slice(1);
@@ -35,7 +37,9 @@ export function jointDefinition<Family extends string, R extends Route>(
     const name = joint.kernels + formula.name.slice(base.length);
     // A formula that reads none of the parameters is the same in all parametrizations.
     if (!isKernel(name)) return formula;
+    const own = joint.composed?.[name];
     const made = kernel(name, (...values) => {
+      if (own) return own(...values);
       const lead = values.length - names.length;
       const joints = values.slice(lead);
       let given = 0;

@@ -98,7 +98,7 @@ const eulerGamma = 0.57721566490153286061;
 
 /**
  * Divergence of a Weibull distribution of shape k and scale λ from a gamma one: log k − 1 − γ + b γ / k +
- * b log(t / λ) + (λ / t) Γ(1 + 1/k) + log Γ(b). Source: by E log x = log λ − γ / k and E x = λ Γ(1 + 1/k). @kernel
+ * b log(t / λ) + (λ / t) Γ(1 + 1/k) + log Γ(b). Source: by E log x = log λ − γ / k and E x = λ Γ(1 + 1/k).
  */
 export function weibullGammaKl(shape: number, scale: number, otherShape: number, otherScale: number): number {
   return (
@@ -152,7 +152,7 @@ function meanRatio(shape: number, scale: number, otherScale: number): number {
 
 /**
  * Divergence of a gamma distribution from a Weibull one of shape k and scale λ: −(a + log s + log Γ(a) + (1 − a) ψ(a))
- * − log k + k log λ − (k − 1) (ψ(a) + log s) + (s / λ)^k Γ(a + k) / Γ(a). Source: by the same moments. @kernel
+ * − log k + k log λ − (k − 1) (ψ(a) + log s) + (s / λ)^k Γ(a + k) / Γ(a). Source: by the same moments.
  */
 export function gammaWeibullKl(shape: number, scale: number, otherShape: number, otherScale: number): number {
   return (

@@ -32,6 +32,7 @@ export function kumaraswamyLogDensity_x(x: number, alpha: number, beta: number):
 }
 export function kumaraswamyLogDensity_alpha(x: number, alpha: number, beta: number): number {
   if (!isInside(x)) return 0.0;
+  if (!(alpha > 0.0)) return NaN;
   return 1.0 / alpha + Math.log(x) - (beta - 1.0) * odds(x, alpha) * Math.log(x);
 }
 export function kumaraswamyLogDensity_beta(x: number, alpha: number, beta: number): number {
