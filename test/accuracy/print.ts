@@ -1,4 +1,5 @@
 // npm run accuracy: compares every formula with its reference values, prints the table and writes it to docs/.
+// `npm run accuracy -- --scipy` measures SciPy's column again too, which takes minutes.
 import { execFileSync } from 'node:child_process';
 import { readFileSync, writeFileSync } from 'node:fs';
 import { join } from 'node:path';
@@ -10,6 +11,7 @@ const peerFile = join(docs, 'accuracy-scipy.json');
 /** SciPy's float32 results at the same points, worst error by row; measured again where SciPy is there. */
 function peers(): Record<string, string> {
   try {
+    if (!process.argv.includes('--scipy')) throw new Error('measured with --scipy');
     const script = join(import.meta.dirname, '../reference/scipy_float32.py');
     const text = execFileSync('/usr/bin/python3', [script], { encoding: 'utf8', maxBuffer: 2 ** 26 });
     writeFileSync(peerFile, text);
