@@ -124,9 +124,17 @@ describe.each(Object.entries(scalars))('%s', (family, { make, members, parametri
   // the quantile function. |z| > 4.892 with odds 1e-6.
   // On a circle the function has to close, or its jump is missed.
   const circular: [string, Scalar, (z: tf.Tensor) => tf.Tensor][] = [
-    ['sin z', (z) => Math.sin(z), (z) => tf.sin(z)],
-    ['exp(cos(z − 1))', (z) => Math.exp(Math.cos(z - 1)), (z) => tf.exp(tf.cos(tf.sub(z, 1)))],
-    ['cos z + sin 2z', (z) => Math.cos(z) + Math.sin(2 * z), (z) => tf.add(tf.cos(z), tf.sin(tf.mul(2, z)))],
+    ['90 sin z', (z) => 90 * Math.sin(z), (z) => tf.mul(90, tf.sin(z))],
+    [
+      '90 exp(cos(z − 1))',
+      (z) => 90 * Math.exp(Math.cos(z - 1)),
+      (z) => tf.mul(90, tf.exp(tf.cos(tf.sub(z, 1)))),
+    ],
+    [
+      'cos z + 9 sin 2z',
+      (z) => Math.cos(z) + 9 * Math.sin(2 * z),
+      (z) => tf.add(tf.cos(z), tf.mul(9, tf.sin(tf.mul(2, z)))),
+    ],
   ];
   const linear: [string, Scalar, (z: tf.Tensor) => tf.Tensor][] = [
     entries[family]?.heavyTailed
