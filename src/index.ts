@@ -95,6 +95,7 @@ export { type Product, type ProductBase, product } from './distributions/product
 export { type QuantileDefinition, quantileFamily } from './distributions/quantileFamily.js';
 export { type Rayleigh, type RayleighOptions, rayleigh } from './distributions/rayleigh.js';
 export { type Reciprocal, type ReciprocalOptions, reciprocal } from './distributions/reciprocal.js';
+export type { ScaleAndShapeOptions, ScaleOptions } from './distributions/scaleAndShape.js';
 export { type StudentT, type StudentTOptions, studentT } from './distributions/studentT.js';
 export { type Triangular, type TriangularOptions, triangular } from './distributions/triangular.js';
 export { type Uniform, type UniformOptions, uniform } from './distributions/uniform.js';
