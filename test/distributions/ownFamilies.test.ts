@@ -234,7 +234,7 @@ describe('wrong definitions have one clear message each', () => {
     ],
     [
       () => quantileFamily(any({ ...good, quantile, support: 'half' })),
-      "quantileFamily: support of f must be one of real, positive, unitInterval, interval, binary, count; got the string 'half'; name one of these",
+      "quantileFamily: support of f must be one of real, positive, unitInterval, interval, ray, binary, count; got the string 'half'; name one of these",
     ],
     [
       () => quantileFamily(any({ ...good, quantile, parameters: {} })),
