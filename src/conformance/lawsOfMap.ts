@@ -1,8 +1,6 @@
 import * as tf from '@tensorflow/tfjs';
 import * as fc from 'fast-check';
-import { ParameterError } from '../errors.js';
-import type { SmoothMap } from '../maps/smoothMap.js';
-import { describe } from '../tensor/checks.js';
+import { requireMap, type SmoothMap } from '../maps/smoothMap.js';
 import { type Law, type LawOptions, law, readSetting } from './law.js';
 import {
   direction,
@@ -52,15 +50,7 @@ const usual = fc.oneof(number(-3, 3), number(-12, 12));
  */
 export function lawsOfMap(map: SmoothMap, options: MapLawOptions = {}): Law[] {
   const where = 'lawsOfMap';
-  if (
-    typeof map?.apply !== 'function' ||
-    typeof map.invert !== 'function' ||
-    typeof map.logVolume !== 'function'
-  ) {
-    throw new ParameterError(
-      `${where}: map must have apply, invert and logVolume; got ${describe(map)}; pass for example expMap()`,
-    );
-  }
+  requireMap(where, map);
   const setting = readSetting(where, map.name, options, ['points']);
   const points = fc.array(options.points ?? usual, { minLength: 4, maxLength: 8 });
   const one = (name: string, property: (map: SmoothMap, points: readonly number[]) => void): Law =>

@@ -1,4 +1,5 @@
 import * as tf from '@tensorflow/tfjs';
+import { EULER } from '../numeric/constants.js';
 import { real } from '../support/support.js';
 import { composedExp, composedLog1p } from '../tensor/composedMath.js';
 import { composedExpm1, composedLog1mexp } from '../tensor/composedRemainders.js';
@@ -15,7 +16,6 @@ export interface Gumbel extends Distribution<'gumbel', 'pathwise'>, HasMoments, 
   parameter(name: 'location' | 'scale'): tf.Tensor;
 }
 
-const eulerGamma = 0.5772156649015329;
 const rarity = (z: tf.Tensor): tf.Tensor => composedExp(tf.neg(z));
 // Below z = −40 nothing is left of a probability; its derivative must not be zero times infinity.
 const held = (z: tf.Tensor): tf.Tensor => rarity(tf.maximum(z, -40));
@@ -27,10 +27,10 @@ const make = locationScaleRoute({
   logDensity: (z) => tf.neg(tf.add(z!, rarity(z!))),
   draw: { noise: 'gumbel' },
   forms: {
-    mean: () => eulerGamma,
+    mean: () => EULER,
     mode: locationItself,
     variance: () => Math.PI ** 2 / 6,
-    entropy: () => 1 + eulerGamma,
+    entropy: () => 1 + EULER,
     cdf: (z) => composedExp(tf.neg(held(z!))),
     survival: (z) => tf.neg(composedExpm1(tf.neg(held(z!)))),
     logCdf: (z) => tf.neg(rarity(z!)),

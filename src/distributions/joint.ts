@@ -2,7 +2,7 @@ import type * as tf from '@tensorflow/tfjs';
 import { type Formula, isKernel, kernel } from '../tensor/formula.js';
 import type { Route } from './distribution.js';
 import type { ParameterForms } from './parameters.js';
-import { kernelNamed } from './placed.js';
+import { kernelName, kernelNamed } from './placed.js';
 import type { ScalarDefinition } from './scalarFamily.js';
 
 /**
@@ -19,11 +19,9 @@ export interface Joint {
   readonly composed?: Readonly<Record<string, (...values: tf.Tensor[]) => tf.Tensor>>;
 }
 
-const capital = (name: string): string => name[0]!.toUpperCase() + name.slice(1);
-
 /** How the family's own parameter `name` follows from the joint ones. */
 export function conversion(joint: Joint, name: string): Formula {
-  return kernelNamed(`${joint.kernels}${capital(name)}`, joint.gives[name]!);
+  return kernelNamed(kernelName(joint.kernels, name), joint.gives[name]!);
 }
 
 /** The family's definition in the joint parameters. */

@@ -67,6 +67,11 @@ export function placedKernel(name: string, kind: PlacedKind, located: boolean, s
   return kernelNamed(name, composedPlaced(kind, located, standard));
 }
 
+/** The name of a family's kernel: `gumbel` and `logDensity` make `gumbelLogDensity`. */
+export function kernelName(front: string, name: string): string {
+  return front + name[0]!.toUpperCase() + name.slice(1);
+}
+
 /** A compiled kernel by a name put together from a family's and a formula's. */
 export function kernelNamed(name: string, composed: (...values: tf.Tensor[]) => tf.Tensor): Formula {
   if (!isKernel(name)) throw new TypeError(`there is no kernel ${name}`);

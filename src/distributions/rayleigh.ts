@@ -1,4 +1,5 @@
 import * as tf from '@tensorflow/tfjs';
+import { EULER } from '../numeric/constants.js';
 import { positive } from '../support/support.js';
 import { composedExp, composedLog1p, when } from '../tensor/composedMath.js';
 import { composedExpm1, composedLog1mexp } from '../tensor/composedRemainders.js';
@@ -30,7 +31,7 @@ const make = locationScaleRoute({
     mean: () => Math.sqrt(Math.PI / 2),
     mode: () => 1,
     variance: () => 2 - Math.PI / 2,
-    entropy: () => 1 + (0.5772156649015329 - Math.LN2) / 2,
+    entropy: () => 1 + (EULER - Math.LN2) / 2,
     cdf: (z) => onPositive(z!, (v) => tf.neg(composedExpm1(tf.neg(held(v)))), 0),
     survival: (z) => onPositive(z!, (v) => composedExp(tf.neg(held(v))), 1),
     logCdf: (z) =>

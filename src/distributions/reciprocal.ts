@@ -4,6 +4,7 @@ import type { ParameterValue } from '../tensor/checks.js';
 import { composedLogRatio } from '../tensor/composedLogRatio.js';
 import { choose, composedExp, composedSigmoid, when } from '../tensor/composedMath.js';
 import { kernel } from '../tensor/formula.js';
+import { between } from './between.js';
 import type { Distribution, HasMoments, HasQuantiles, HasTails } from './distribution.js';
 import { requireOrderedBounds } from './orderedBounds.js';
 import { aboveZero } from './parameters.js';
@@ -29,16 +30,7 @@ export interface Reciprocal
 type Bounded = (x: tf.Tensor, a: tf.Tensor, b: tf.Tensor) => tf.Tensor;
 
 /** A function of a point inside the open interval, with what it is below and above. */
-function between(inside: Bounded, below: number, above: number) {
-  return (...[given, a, b]: tf.Tensor[]): tf.Tensor => {
-    const x = tf.add(given!, tf.zerosLike(tf.add(a!, b!)));
-    const within = tf.logicalAnd(tf.greater(x, a!), tf.less(x, b!));
-    const held = (t: tf.Tensor, instead: number): tf.Tensor =>
-      when(within, tf.add(t, tf.zerosLike(x)), tf.fill(x.shape, instead));
-    const value = inside(held(x, 1.5), held(a!, 1), held(b!, 2));
-    return when(within, value, when(tf.lessEqual(x, a!), tf.fill(x.shape, below), tf.fill(x.shape, above)));
-  };
-}
+const inInterval = (f: Bounded, below: number, above: number) => between(f, [1.5, 1, 2], below, above);
 
 const near: Bounded = (x, a, b) => tf.div(composedLogRatio(x, a), composedLogRatio(b, a));
 const far: Bounded = (x, a, b) => tf.div(composedLogRatio(b, x), composedLogRatio(b, a));
@@ -117,10 +109,14 @@ const make = quantileRoute({
     mode: { ...kernel('identity', (v) => v.clone()), parameters: ['lower'] },
     variance: (a, b) => variance(a!, b!),
     entropy: (a, b) => tf.add(tf.log(composedLogRatio(b!, a!)), tf.mul(0.5, tf.add(tf.log(a!), tf.log(b!)))),
-    cdf: between(below, 0, 1),
-    survival: between(above, 1, 0),
-    logCdf: between((x, a, b) => logShare(below(x, a, b), above(x, a, b)), Number.NEGATIVE_INFINITY, 0),
-    logSurvival: between((x, a, b) => logShare(above(x, a, b), below(x, a, b)), 0, Number.NEGATIVE_INFINITY),
+    cdf: inInterval(below, 0, 1),
+    survival: inInterval(above, 1, 0),
+    logCdf: inInterval((x, a, b) => logShare(below(x, a, b), above(x, a, b)), Number.NEGATIVE_INFINITY, 0),
+    logSurvival: inInterval(
+      (x, a, b) => logShare(above(x, a, b), below(x, a, b)),
+      0,
+      Number.NEGATIVE_INFINITY,
+    ),
     quantile: (p, a, b) => pointAt(p!, tf.sub(1, p!), a!, b!),
     upperQuantile: (p, a, b) => pointAt(tf.sub(1, p!), p!, a!, b!),
   },

@@ -9,7 +9,7 @@ import type { Operand } from '../tensor/operand.js';
 import type { Joint } from './joint.js';
 import { affineFormula } from './locationScale.js';
 import type { ParameterForms } from './parameters.js';
-import { kernelNamed, placedKernel, placedKinds } from './placed.js';
+import { kernelName, kernelNamed, placedKernel, placedKinds } from './placed.js';
 import { type ScalarDefinition, type ScalarDistribution, scalarFamily } from './scalarFamily.js';
 
 // The routes by which the library's own families are made. Each formula is a compiled kernel named after the
@@ -44,8 +44,6 @@ interface OwnFamily<Family extends string> {
   readonly kernels?: string;
   readonly support: Support;
   readonly parameters: ParameterForms;
-  /** Parameters that carry no gradient, such as a count. */
-  readonly constant?: readonly string[];
   /** Parameters that are the same for all members, such as the scale of a chi-squared. */
   readonly fixed?: Readonly<Record<string, number>>;
   /** Parametrizations that give several parameters together. */
@@ -109,8 +107,6 @@ export interface OwnPushforward<Family extends string> extends Omit<OwnFamily<Fa
 
 type Factory<Family extends string> = (options: object) => ScalarDistribution<Family, 'pathwise'>;
 
-const capital = (name: string): string => name[0]!.toUpperCase() + name.slice(1);
-
 /** The formulas of a family: those of any member, or carried from the standard one where `located` says how. */
 function formulas<Family extends string>(
   own: OwnFamily<Family>,
@@ -120,7 +116,7 @@ function formulas<Family extends string>(
 } {
   const named = (name: string, composed: Form): Formula => {
     if (typeof composed !== 'function') return composed;
-    const front = `${own.kernels ?? own.family}${capital(name)}`;
+    const front = kernelName(own.kernels ?? own.family, name);
     // A special function may have the name already.
     const full = isKernel(`${front}Of`) ? `${front}Of` : front;
     return located === undefined
@@ -143,7 +139,7 @@ function formulas<Family extends string>(
 }
 
 function common<Family extends string>(own: OwnFamily<Family>) {
-  const { family, support, parameters, fixed, constant, joints, kernels, check } = own;
+  const { family, support, parameters, fixed, joints, kernels, check } = own;
   return {
     family,
     route: 'pathwise' as const,
@@ -151,7 +147,6 @@ function common<Family extends string>(own: OwnFamily<Family>) {
     parameters,
     kernels: kernels ?? family,
     ...(fixed ? { fixed } : {}),
-    ...(constant ? { constant } : {}),
     ...(joints ? { joints } : {}),
     ...(check ? { check } : {}),
   };
@@ -178,11 +173,15 @@ export function quantileRoute<Family extends string>(own: OwnQuantile<Family>): 
 /** A family by a map of another family's points: density, tails, quantiles and draws follow. */
 export function pushforwardRoute<Family extends string>(own: OwnPushforward<Family>): Factory<Family> {
   const { map, base, noise, forms, ...rest } = own;
+  /** Whether a point lies in the image, and what the map makes it of; of a point inside, where it does not. */
+  const before = (x: tf.Tensor): { inside: tf.Tensor; z: tf.Tensor } => {
+    const inside = map.inside(x);
+    return { inside, z: map.invert(when(inside, x, tf.fill(x.shape, map.somewhere))) };
+  };
   const tail =
     (form: Composed, below: number, above: number): Composed =>
     (x, ...parameters) => {
-      const inside = map.inside(x!);
-      const z = map.invert(when(inside, x!, tf.fill(x!.shape, map.somewhere)));
+      const { inside, z } = before(x!);
       const ends = when(map.above(x!), tf.fill(x!.shape, above), tf.fill(x!.shape, below));
       return tf.add(
         choose(inside, form(z, ...parameters) as tf.Tensor, 0),
@@ -196,8 +195,7 @@ export function pushforwardRoute<Family extends string>(own: OwnPushforward<Fami
   return quantileRoute({
     ...rest,
     logDensity: (x, ...parameters) => {
-      const inside = map.inside(x!);
-      const z = map.invert(when(inside, x!, tf.fill(x!.shape, map.somewhere)));
+      const { inside, z } = before(x!);
       const value = tf.sub(base.logDensity(z, ...parameters), map.logVolume(z));
       return choose(inside, value, Number.NEGATIVE_INFINITY);
     },

@@ -41,8 +41,6 @@ export interface ScalarDefinition<Family extends string, R extends Route> {
   readonly joints?: readonly Joint[];
   /** Parameters that are the same for all members. */
   readonly fixed?: Readonly<Record<string, number>>;
-  /** Parameters that carry no gradient, such as a count. */
-  readonly constant?: readonly string[];
   /** Checks across parameters, such as an order between them. */
   check?(parameters: Record<string, Operand>): void;
 }
@@ -83,7 +81,6 @@ export function scalarFamily<Family extends string, R extends Route>(
     const used = found?.definition ?? definition;
     const elsewhere = joints.map((j) => j.parameters);
     const operands = readParameters(family, used.parameters, options, found ? [] : elsewhere);
-    for (const name of definition.constant ?? []) operands[name] = detachedOperand(operands[name]!);
     const arrayShape = broadcastShapes(
       family,
       Object.values(operands).map((o) => o.shape),
@@ -155,7 +152,8 @@ function member<Family extends string, R extends Route>(
     joint
       ? Object.fromEntries(
           Object.keys(joint.gives).map((name) => {
-            const value = applyFormula(family, conversion(joint, name), pick(conversion(joint, name), []));
+            const formula = conversion(joint, name);
+            const value = applyFormula(family, formula, pick(formula, []));
             return [name, operandFrom(family, name, value)];
           }),
         )

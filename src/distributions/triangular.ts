@@ -3,6 +3,7 @@ import { interval } from '../support/support.js';
 import type { ParameterValue } from '../tensor/checks.js';
 import { choose, composedSigmoid, when } from '../tensor/composedMath.js';
 import { kernel } from '../tensor/formula.js';
+import { between } from './between.js';
 import type { Distribution, HasMoments, HasQuantiles, HasTails } from './distribution.js';
 import { requireTogether } from './orderedBounds.js';
 import { finite } from './parameters.js';
@@ -48,20 +49,8 @@ function shareAbove(x: tf.Tensor, a: tf.Tensor, c: tf.Tensor, b: tf.Tensor): tf.
 }
 
 /** A function inside the open interval, with what it is below and above. */
-function between(
-  inside: (x: tf.Tensor, ...rest: Parameters<Sided>) => tf.Tensor,
-  below: number,
-  above: number,
-) {
-  return (...given: tf.Tensor[]): tf.Tensor => {
-    const zero = tf.zerosLike(given.reduce((sum, t) => tf.add(sum, t)));
-    const [x, a, c, b] = given.map((t) => tf.add(t, zero)) as [tf.Tensor, tf.Tensor, tf.Tensor, tf.Tensor];
-    const within = tf.logicalAnd(tf.greater(x, a), tf.less(x, b));
-    const held = (t: tf.Tensor, instead: number): tf.Tensor => when(within, t, tf.add(zero, instead));
-    const value = inside(held(x, 0.25), held(a, 0), held(c, 0.5), held(b, 1));
-    return when(within, value, when(tf.lessEqual(x, a), tf.add(zero, below), tf.add(zero, above)));
-  };
-}
+const inInterval = (f: typeof shareBelow, below: number, above: number) =>
+  between(f, [0.25, 0, 0.5, 1], below, above);
 
 /** The point with these shares below and above; see the double-precision formula. */
 function pointAt(below: tf.Tensor, above: tf.Tensor, ...[a, c, b]: Parameters<Sided>): tf.Tensor {
@@ -111,10 +100,14 @@ const make = quantileRoute({
       return tf.div(tf.add(tf.add(tf.square(u), tf.mul(u, v)), tf.square(v)), 18);
     },
     entropy: (a, _c, b) => tf.add(0.5 - Math.LN2, tf.log(tf.sub(b!, a!))),
-    cdf: between(shareBelow, 0, 1),
-    survival: between(shareAbove, 1, 0),
-    logCdf: between((...v) => logShare(shareBelow(...v), shareAbove(...v)), Number.NEGATIVE_INFINITY, 0),
-    logSurvival: between((...v) => logShare(shareAbove(...v), shareBelow(...v)), 0, Number.NEGATIVE_INFINITY),
+    cdf: inInterval(shareBelow, 0, 1),
+    survival: inInterval(shareAbove, 1, 0),
+    logCdf: inInterval((...v) => logShare(shareBelow(...v), shareAbove(...v)), Number.NEGATIVE_INFINITY, 0),
+    logSurvival: inInterval(
+      (...v) => logShare(shareAbove(...v), shareBelow(...v)),
+      0,
+      Number.NEGATIVE_INFINITY,
+    ),
     quantile: (p, a, c, b) => pointAt(p!, tf.sub(1, p!), a!, c!, b!),
     upperQuantile: (p, a, c, b) => pointAt(tf.sub(1, p!), p!, a!, c!, b!),
   },

@@ -1,12 +1,8 @@
 import * as tf from '@tensorflow/tfjs';
-import { ParameterError } from '../errors.js';
-import { broadcastShapes, broadcastStrides, forEachBroadcast } from '../kernels/layout.js';
 import { interval } from '../support/support.js';
-import { valuesAreChecked } from '../tensor/backend.js';
-import { type ParameterValue, positionText } from '../tensor/checks.js';
+import type { ParameterValue } from '../tensor/checks.js';
 import { choose, composedLog1p, stepwise, when } from '../tensor/composedMath.js';
 import { kernel } from '../tensor/formula.js';
-import { type Operand, operandData } from '../tensor/operand.js';
 import type {
   Distribution,
   HasEntropy,
@@ -15,6 +11,7 @@ import type {
   HasTails,
   HasVariance,
 } from './distribution.js';
+import { requireOrderedBounds } from './orderedBounds.js';
 import { finite } from './parameters.js';
 import { quantileRoute } from './routes.js';
 
@@ -99,24 +96,8 @@ const make = quantileRoute({
     quantile: (p, a, b) => uniformQuantile(p!, a!, b!),
     upperQuantile: (p, a, b) => uniformQuantile(p!, b!, a!),
   },
-  check: requireOrder,
+  check: requireOrderedBounds('uniform'),
 });
-
-function requireOrder({ lower, upper }: Record<string, Operand>): void {
-  const accelerated = lower!.source instanceof tf.Tensor || upper!.source instanceof tf.Tensor;
-  if (accelerated && !valuesAreChecked()) return;
-  const shape = broadcastShapes('uniform', [lower!.shape, upper!.shape]);
-  const [a, b] = [operandData(lower!), operandData(upper!)];
-  const strides = [broadcastStrides(lower!.shape, shape), broadcastStrides(upper!.shape, shape)];
-  forEachBroadcast(shape, strides, (i, offsets) => {
-    const [low, high] = [a[offsets[0]!]!, b[offsets[1]!]!];
-    if (low < high) return;
-    const at = shape.length === 0 ? '' : ` at ${positionText(i, shape)}`;
-    throw new ParameterError(
-      `uniform: upper must be above lower; got lower ${low} and upper ${high}${at}; swap them or widen the interval`,
-    );
-  });
-}
 
 /**
  * The uniform distribution between two bounds: every point of the interval alike.

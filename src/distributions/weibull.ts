@@ -1,4 +1,5 @@
 import * as tf from '@tensorflow/tfjs';
+import { EULER } from '../numeric/constants.js';
 import { logMomentRatio } from '../numeric/families/weibull.js';
 import { positive } from '../support/support.js';
 import { chebyshevPolynomial, polynomial } from '../tensor/chebyshev.js';
@@ -18,8 +19,6 @@ export interface Weibull extends Distribution<'weibull', 'pathwise'>, HasMoments
   /** A parameter as the formulas read it, differentiable. */
   parameter(name: 'scale' | 'shape'): tf.Tensor;
 }
-
-const eulerGamma = 0.5772156649015329;
 
 /** z^shape, held where no probability is left. */
 function power(z: tf.Tensor, k: tf.Tensor): tf.Tensor {
@@ -68,7 +67,7 @@ const make = locationScaleRoute({
         tf.neg(composedExpm1(tf.neg(composedMomentRatio(u)))),
       );
     },
-    entropy: (k) => tf.add(tf.sub(tf.mul(eulerGamma, tf.sub(1, tf.div(1, k!))), tf.log(k!)), 1),
+    entropy: (k) => tf.add(tf.sub(tf.mul(EULER, tf.sub(1, tf.div(1, k!))), tf.log(k!)), 1),
     cdf: (z, k) => onPositive(z!, (v) => tf.neg(composedExpm1(tf.neg(power(v, k!)))), 0),
     survival: (z, k) => onPositive(z!, (v) => composedExp(tf.neg(power(v, k!))), 1),
     logCdf: (z, k) =>

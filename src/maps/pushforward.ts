@@ -11,11 +11,12 @@ import type {
   HasUpperQuantile,
   Route,
 } from '../distributions/distribution.js';
+import { sumTrailing } from '../distributions/fold.js';
 import { ParameterError } from '../errors.js';
 import type { Stream } from '../random/stream.js';
 import { describe, requireTensor } from '../tensor/checks.js';
 import { choose, when } from '../tensor/composedMath.js';
-import type { SmoothMap } from './smoothMap.js';
+import { requireMap, type SmoothMap } from './smoothMap.js';
 
 /** The tail and quantile functions that a pushforward has because its base has them. */
 export type PushedForms<Base> = (Base extends HasTails ? HasTails : unknown) &
@@ -99,40 +100,22 @@ export function pushforward<const Base extends Distribution<string, Route>, cons
       `pushforward: base must have a density; got ${base.family}, which is counted; map its draws instead`,
     );
   }
-  if (
-    typeof map?.apply !== 'function' ||
-    typeof map.invert !== 'function' ||
-    typeof map.logVolume !== 'function'
-  ) {
-    throw new ParameterError(
-      `pushforward: map must have apply, invert and logVolume; got ${describe(map)}; pass for example expMap()`,
-    );
-  }
+  requireMap('pushforward', map);
   const family = `pushforward<${base.family}, ${map.name}>`;
-  const volume = (z: tf.Tensor): tf.Tensor => {
-    const each = map.logVolume(z);
-    const rank = base.pointShape.length;
-    return rank === 0
-      ? each
-      : tf.sum(
-          each,
-          Array.from({ length: rank }, (_, k) => k - rank),
-        );
-  };
-  const outsideOf = (inside: tf.Tensor): tf.Tensor => {
-    const rank = base.pointShape.length;
-    return rank === 0
+  const rank = base.pointShape.length;
+  const volume = (z: tf.Tensor): tf.Tensor => sumTrailing(map.logVolume(z), rank);
+  const allInside = (inside: tf.Tensor): tf.Tensor =>
+    rank === 0
       ? inside
       : tf.all(
           inside,
           Array.from({ length: rank }, (_, k) => inside.rank - rank + k),
         );
-  };
   const methods: Record<string, unknown> = {};
   const from = base as unknown as Tails;
   for (const name of functions) {
     const own = map.rising ? name : otherTail[name];
-    if (typeof from[own] !== 'function' || base.pointShape.length > 0) continue;
+    if (typeof from[own] !== 'function' || rank > 0) continue;
     methods[name] = (x: tf.Tensor) => {
       requireTensor(`${family}.${name}`, 'x', x);
       return tf.tidy(() => {
@@ -144,13 +127,13 @@ export function pushforward<const Base extends Distribution<string, Route>, cons
   }
   for (const name of inverses) {
     const own = map.rising ? name : otherTail[name];
-    if (typeof from[own] !== 'function' || base.pointShape.length > 0) continue;
+    if (typeof from[own] !== 'function' || rank > 0) continue;
     methods[name] = (p: tf.Tensor) => tf.tidy(() => map.apply(from[own]!(p)));
   }
   return Object.freeze({
     family,
     route: base.route,
-    support: base.pointShape.length === 0 ? map.onto : base.support,
+    support: rank === 0 ? map.onto : base.support,
     arrayShape: base.arrayShape,
     pointShape: base.pointShape,
     base,
@@ -167,7 +150,7 @@ export function pushforward<const Base extends Distribution<string, Route>, cons
         const { inside, held } = image(map, x);
         const z = map.invert(held);
         const value = tf.sub(base.logDensity(z), volume(z));
-        return choose(broadcastTest(outsideOf(inside), value), value, Number.NEGATIVE_INFINITY);
+        return choose(broadcastTest(allInside(inside), value), value, Number.NEGATIVE_INFINITY);
       });
     },
     detached: () => pushforward(base.detached(), map),

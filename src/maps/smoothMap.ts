@@ -1,5 +1,7 @@
 import type * as tf from '@tensorflow/tfjs';
+import { ParameterError } from '../errors.js';
 import type { Support } from '../support/support.js';
+import { describe } from '../tensor/checks.js';
 
 /**
  * An invertible differentiable map with its log volume change, from one set onto another. The maps here act on
@@ -20,4 +22,13 @@ export interface SmoothMap<Name extends string = string> {
   invert(x: tf.Tensor): tf.Tensor;
   /** log |d apply / dz| at each point, differentiable. */
   logVolume(z: tf.Tensor): tf.Tensor;
+}
+
+/** Refuses what is no map. */
+export function requireMap(where: string, map: SmoothMap): void {
+  const steps = [map?.apply, map?.invert, map?.logVolume];
+  if (steps.every((step) => typeof step === 'function')) return;
+  throw new ParameterError(
+    `${where}: map must have apply, invert and logVolume; got ${describe(map)}; pass for example expMap()`,
+  );
 }

@@ -1,4 +1,5 @@
 import { trigamma } from './trigamma.js';
+import { trigammaDifference } from './trigammaDifference.js';
 
 /**
  * ψ(a + b) − ψ(a) for a > 0, b ≥ 0, with relative accuracy also where b ≪ a, where the difference of the two
@@ -38,8 +39,7 @@ export function digammaDifference_b(a: number, b: number): number {
   return trigamma(a + b);
 }
 /**
- * ψ′(a + b) − ψ′(a), by the same recurrence and by the same divided differences of the trigamma function's
- * asymptotic series; relative accuracy for b ≪ a too. DLMF 5.15.5, 5.15.8.
+ * ψ′(a + b) − ψ′(a), with relative accuracy for b ≪ a too.
  * @example
  * ```ts
  * import { digammaDifference_a } from 'leadline/numeric';
@@ -48,35 +48,7 @@ export function digammaDifference_b(a: number, b: number): number {
  * ```
  */
 export function digammaDifference_a(a: number, b: number): number {
-  if (!(a >= 0.0 && b >= 0.0)) return NaN;
-  let sum = 0.0;
-  let x = a;
-  while (x < 8.0) {
-    sum += (b / x / (x + b)) * (1.0 / x + 1.0 / (x + b));
-    x += 1.0;
-  }
-  const r = 1.0 / x;
-  const s = 1.0 / (x + b);
-  const first = b * r * s;
-  const u = r * r;
-  const v = s * s;
-  let p = -3617.0 / 510.0;
-  let q = p;
-  p = 7.0 / 6.0 + u * p;
-  q = p + v * q;
-  p = -691.0 / 2730.0 + u * p;
-  q = p + v * q;
-  p = 5.0 / 66.0 + u * p;
-  q = p + v * q;
-  p = -1.0 / 30.0 + u * p;
-  q = p + v * q;
-  p = 1.0 / 42.0 + u * p;
-  q = p + v * q;
-  p = -1.0 / 30.0 + u * p;
-  q = p + v * q;
-  p = 1.0 / 6.0 + u * p;
-  const third = (u + r * s + v) * p + s * v * (r + s) * q;
-  return -sum - first * (1.0 + 0.5 * (r + s) + third);
+  return -trigammaDifference(a, b);
 }
 
 /**

@@ -1,4 +1,5 @@
 import * as tf from '@tensorflow/tfjs';
+import { EULER } from '../numeric/constants.js';
 import { scaledExponentialIntegral } from '../numeric/scaledExponentialIntegral.js';
 import { chebyshevPolynomial, polynomial } from './chebyshev.js';
 import { composedExp, when } from './composedMath.js';
@@ -28,7 +29,7 @@ export function composedScaledExponentialIntegral(x: tf.Tensor): tf.Tensor {
   const one = tf.onesLike(x);
   const small = when(low, x, one);
   const large = when(low, one, x);
-  const series = tf.sub(polynomial(near, small), tf.add(tf.log(small), 0.5772156649015329));
+  const series = tf.sub(polynomial(near, small), tf.add(tf.log(small), EULER));
   const s = tf.sub(1, tf.div(6, tf.add(large, 3)));
   const t = tf.div(tf.sub(tf.mul(4, s), 1), 3);
   return when(low, tf.mul(composedExp(small), series), tf.div(polynomial(far, t), large));

@@ -1,4 +1,5 @@
 import * as tf from '@tensorflow/tfjs';
+import { EULER } from '../numeric/constants.js';
 import { logGamma1p } from '../numeric/logGamma.js';
 import { chebyshevPolynomial, polynomial } from './chebyshev.js';
 import { composedLogGamma, when } from './composedMath.js';
@@ -34,10 +35,9 @@ export function composedLogGamma1p(u: tf.Tensor): tf.Tensor {
 
 /** log Γ(r) + γ (r − 1) for r > 0, never negative: its double zero at 1 times a polynomial, written out elsewhere. */
 export function composedLogGammaExcess(r: tf.Tensor): tf.Tensor {
-  const euler = 0.5772156649015329;
   excess ??= chebyshevPolynomial((t) => {
     const v = 0.25 + 0.75 * t;
-    return (logGamma1p(v) + euler * v) / (v * v);
+    return (logGamma1p(v) + EULER * v) / (v * v);
   }, 14);
   const lessOne = tf.sub(r, 1);
   const near = tf.lessEqual(tf.abs(tf.sub(lessOne, 0.25)), 0.75);
@@ -46,6 +46,6 @@ export function composedLogGammaExcess(r: tf.Tensor): tf.Tensor {
   return when(
     near,
     tf.mul(tf.square(held), polynomial(excess, tf.div(tf.sub(held, 0.25), 0.75))),
-    tf.add(tf.sub(composedLogGamma1p(far), tf.log(far)), tf.mul(euler, tf.sub(far, 1))),
+    tf.add(tf.sub(composedLogGamma1p(far), tf.log(far)), tf.mul(EULER, tf.sub(far, 1))),
   );
 }

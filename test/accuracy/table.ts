@@ -1,7 +1,7 @@
-import { readdirSync, readFileSync } from 'node:fs';
+import { readFileSync } from 'node:fs';
 import { join } from 'node:path';
 import { families, type Reference, references } from '../distributions/families.js';
-import { numericFunctions, readReference } from '../numeric/reference.js';
+import { crossingTerms, groups, numericFunctions, readReference } from '../numeric/reference.js';
 import { score, ulp32 } from '../numeric/ulp.js';
 import { argumentsText, errorsOf, insideDouble } from './errors.js';
 
@@ -67,25 +67,17 @@ function rowsOfReference(reference: Reference): AccuracyRow[] {
   });
 }
 
-// The logarithm of a sum near one is a difference of two equal terms, of the size of the larger argument.
-const crossing: Readonly<Record<string, (...args: number[]) => number>> = {
-  logAddExp: (a, b) => 2 * Math.abs(Math.max(a!, b!)),
-};
-
 /** Rows of the special functions of src/numeric; a derivative has a name of its own there. */
 export async function numericRows(): Promise<AccuracyRow[]> {
   const functions = await numericFunctions();
-  const groups = readdirSync(join(import.meta.dirname, '../reference'))
-    .filter((name) => name.endsWith('.json') && name !== 'hard.json')
-    .map((name) => name.replace('.json', ''));
-  return groups.flatMap((group) =>
+  return groups().flatMap((group) =>
     [...readReference(group)].map(([name, points]) => {
       const formula = functions.get(name)!;
       const [base, partial] = name.split('_') as [string, string | undefined];
       const errors = [true, false].map((rounded) =>
         points.map(({ args, exact }) => {
           const got = formula(...args);
-          const allowed = (2 ** -50 * (crossing[name]?.(...args) ?? 0)) / ulp32(exact);
+          const allowed = (2 ** -50 * (crossingTerms[name]?.(...args) ?? 0)) / ulp32(exact);
           const overflows = Math.abs(exact) >= 2 ** 128 - 2 ** 103;
           return Math.max(0, score(rounded || overflows ? Math.fround(got) : got, exact) - allowed);
         }),

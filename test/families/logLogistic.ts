@@ -1,33 +1,14 @@
-import * as fc from 'fast-check';
 import { type LogLogisticOptions, logLogistic } from '../../src/index.js';
 import { formulas } from '../../src/kernels/generated/formulas.js';
 import type { FamilyEntry } from './entry.js';
-import { logarithm, scale, within } from './parameters.js';
+import { logarithm, scale, scaleAndShape, within } from './parameters.js';
 
 const shape = within(4.5, 12);
 const logShape = within(1.5, 2.48);
 
 export const entry: FamilyEntry = {
   factory: logLogistic as (options: LogLogisticOptions) => ReturnType<typeof logLogistic>,
-  parametrizations: [
-    { scale: 0.7, shape: 2.5 },
-    { logScale: -1, shape: 2.5 },
-    { scale: 0.7, logShape: 1.1 },
-    { logScale: -1, logShape: 1.1 },
-  ],
-  arbitraries: [
-    fc.record({ scale, shape }),
-    fc.record({ logScale: logarithm, shape }),
-    fc.record({ scale, logShape }),
-    fc.record({ logScale: logarithm, logShape }),
-  ],
-  invalid: [
-    { scale: 1, shape: 0 },
-    { scale: -1, shape: 2 },
-    { scale: 1 },
-    { scale: 1, shape: Number.NaN },
-    { scale: 1, shape: 1, logShape: 0 },
-  ],
+  ...scaleAndShape(0.7, { scale, logScale: logarithm }, { shape, logShape }),
   divergence: false,
   members: { scale: [1, 0.3, 8], shape: [1.5, 0.7, 12] },
   seed: 8126,

@@ -2,7 +2,7 @@ import * as fc from 'fast-check';
 import { type ParetoOptions, pareto } from '../../src/index.js';
 import { formulas } from '../../src/kernels/generated/formulas.js';
 import type { FamilyEntry } from './entry.js';
-import { within } from './parameters.js';
+import { scaleAndShape, within } from './parameters.js';
 
 // The density's differences are taken over steps of the spread: a heavier tail would make them too wide.
 const shape = within(12, 30);
@@ -12,25 +12,7 @@ const logScale = within(-0.7, 0.7);
 
 export const entry: FamilyEntry = {
   factory: pareto as (options: ParetoOptions) => ReturnType<typeof pareto>,
-  parametrizations: [
-    { scale: 0.4, shape: 2.5 },
-    { logScale: -1, shape: 2.5 },
-    { scale: 0.4, logShape: 1.1 },
-    { logScale: -1, logShape: 1.1 },
-  ],
-  arbitraries: [
-    fc.record({ scale, shape }),
-    fc.record({ logScale, shape }),
-    fc.record({ scale, logShape }),
-    fc.record({ logScale, logShape }),
-  ],
-  invalid: [
-    { scale: 1, shape: 0 },
-    { scale: -1, shape: 2 },
-    { scale: 1 },
-    { scale: 1, shape: Number.NaN },
-    { scale: 1, shape: 1, logShape: 0 },
-  ],
+  ...scaleAndShape(0.4, { scale, logScale }, { shape, logShape }),
   divergence: true,
   others: fc.record({ scale: within(0.02, 0.09), shape: within(0.5, 6) }),
   members: { scale: [1, 0.3, 8], shape: [1.5, 0.7, 12] },

@@ -23,7 +23,22 @@ export function readReference(group: string): Map<string, readonly Point[]> {
   );
 }
 
+/** The files of reference values for special functions. */
+export function groups(): string[] {
+  return readdirSync(join(import.meta.dirname, '../reference'))
+    .filter((name) => name.endsWith('.json') && name !== 'hard.json')
+    .map((name) => name.replace('.json', ''));
+}
+
 export type Formula = (...args: number[]) => number;
+
+/**
+ * The sizes of the terms whose sum crosses zero, by function. The logarithm of a sum near one is a difference of two
+ * equal terms, of the size of the larger argument.
+ */
+export const crossingTerms: Readonly<Record<string, Formula>> = {
+  logAddExp: (a, b) => 2 * Math.abs(Math.max(a!, b!)),
+};
 
 /** All functions that the files of src/numeric export, families apart, by name. */
 export async function numericFunctions(): Promise<Map<string, Formula>> {

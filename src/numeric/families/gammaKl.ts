@@ -1,4 +1,5 @@
 // Divergences of gamma distributions, from one another and from their relatives, in double precision.
+import { EULER } from '../constants.js';
 import { logRatio } from '../deviance.js';
 import { digamma } from '../digamma.js';
 import { digammaDifference, digammaMinusLogDifference } from '../digammaDifference.js';
@@ -94,8 +95,6 @@ export function gammaExponentialKl_otherRate(shape: number, scale: number, other
   return -gammaKl_otherScale(shape, scale, 1.0, 1.0 / otherRate) / otherRate / otherRate;
 }
 
-const eulerGamma = 0.57721566490153286061;
-
 /**
  * Divergence of a Weibull distribution of shape k and scale λ from a gamma one: log k − 1 − γ + b γ / k +
  * b log(t / λ) + (λ / t) Γ(1 + 1/k) + log Γ(b). Source: by E log x = log λ − γ / k and E x = λ Γ(1 + 1/k).
@@ -104,8 +103,8 @@ export function weibullGammaKl(shape: number, scale: number, otherShape: number,
   return (
     Math.log(shape) -
     1.0 -
-    eulerGamma +
-    (otherShape * eulerGamma) / shape +
+    EULER +
+    (otherShape * EULER) / shape +
     otherShape * logRatio(otherScale, scale) +
     meanRatio(shape, scale, otherScale) +
     logGamma(otherShape)
@@ -117,7 +116,7 @@ export function weibullGammaKl_shape(
   otherShape: number,
   otherScale: number,
 ): number {
-  const inner = otherShape * eulerGamma + meanRatio(shape, scale, otherScale) * digamma(1.0 + 1.0 / shape);
+  const inner = otherShape * EULER + meanRatio(shape, scale, otherScale) * digamma(1.0 + 1.0 / shape);
   return (1.0 - inner / shape) / shape;
 }
 export function weibullGammaKl_scale(
@@ -134,7 +133,7 @@ export function weibullGammaKl_otherShape(
   otherShape: number,
   otherScale: number,
 ): number {
-  return eulerGamma / shape + logRatio(otherScale, scale) + digamma(otherShape);
+  return EULER / shape + logRatio(otherScale, scale) + digamma(otherShape);
 }
 export function weibullGammaKl_otherScale(
   shape: number,

@@ -1,11 +1,10 @@
 // The standard Gumbel distribution, for maxima, in double precision: distribution function exp(−exp(−z)).
 // Source: Johnson, Kotz and Balakrishnan, Continuous Univariate Distributions 2 (1995), chapter 22.
+import { EULER } from '../constants.js';
 import { logRatio } from '../deviance.js';
 import { log1mexp, log1mexp_x } from '../log1mexp.js';
 import { logDistance } from '../logDistance.js';
 import { extremeKl, extremeKlDistance, extremeKlRatio, extremeKlUnit } from './extremeKl.js';
-
-const eulerGamma = 0.57721566490153286061;
 
 /** Log density, −z − exp(−z). @kernel located density */
 export function gumbelLogDensity(z: number): number {
@@ -70,7 +69,7 @@ export function gumbelUpperQuantile_p(p: number): number {
 
 /** Mean, Euler's constant. @kernel located center */
 export function gumbelMean(): number {
-  return eulerGamma;
+  return EULER;
 }
 
 /** Variance, π² / 6. @kernel located spread */
@@ -80,7 +79,7 @@ export function gumbelVariance(): number {
 
 /** Entropy, 1 + Euler's constant. @kernel located entropy */
 export function gumbelEntropy(): number {
-  return 1.0 + eulerGamma;
+  return 1.0 + EULER;
 }
 
 /**

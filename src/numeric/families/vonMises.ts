@@ -3,6 +3,7 @@
 // Source: Mardia and Jupp, Directional Statistics (2000), section 3.5.4.
 import { besselRatio, besselRatio_x, besselRatioComplement, logBesselI0e } from '../bessel.js';
 import { NODES, WEIGHTS } from '../gaussLegendre.js';
+import { lostBits } from '../lostBits.js';
 import { outside } from '../outside.js';
 import {
   vonMisesQuantile as angleOf,
@@ -20,24 +21,18 @@ import {
 const PI: number = 3.141592653589793;
 const LOG_2PI: number = 1.8378770664093453;
 
-/** What the subtraction x − l rounds away (Knuth, The Art of Computer Programming 2, section 4.2.2). */
-function lost(x: number, l: number): number {
-  const d = x - l;
-  const b = x - d;
-  return x - (d + b) + (b - l);
-}
-
 /** sin((x − l) / 2), with relative accuracy near each of its zeros. */
 function sinHalf(x: number, l: number): number {
-  const h = 0.5 * (x - l);
-  const e = 0.5 * lost(x, l);
+  const d = x - l;
+  const h = 0.5 * d;
+  const e = 0.5 * lostBits(x, -l, d);
   return e === 0.0 ? Math.sin(h) : Math.sin(h) * Math.cos(e) + Math.cos(h) * Math.sin(e);
 }
 
 /** sin(x − l). */
 function sinDistance(x: number, l: number): number {
   const d = x - l;
-  const e = lost(x, l);
+  const e = lostBits(x, -l, d);
   return e === 0.0 ? Math.sin(d) : Math.sin(d) * Math.cos(e) + Math.cos(d) * Math.sin(e);
 }
 

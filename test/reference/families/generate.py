@@ -25,6 +25,7 @@ from machinery import text
 
 HERE = os.path.dirname(os.path.abspath(__file__))
 OWN = sorted(name[7:-3] for name in os.listdir(HERE) if name.startswith('family_') and name.endswith('.py'))
+TAILS = ('survival', 'logCdf', 'logSurvival', 'upperQuantile')
 FUNCTIONS, SPREADS, DIGITS, JOINTS = dict(scalar.FUNCTIONS), dict(scalar.SPREADS), {}, {}
 SINGLE, FIRST_FORMS = set(), set()
 form = scalar.form
@@ -47,7 +48,7 @@ def load(family):
 
 def digits(family, function):
     """Two precisions. The families without a file of their own are so cheap that theirs are high for every function."""
-    tail = function in ('survival', 'logCdf', 'logSurvival', 'upperQuantile')
+    tail = function in TAILS
     low = DIGITS[family].get(function, DIGITS[family].get('', 60)) if family in DIGITS else 150 if tail else 420
     return low, low + (40 if family in DIGITS else 80)
 
@@ -132,7 +133,7 @@ def plain(family):
             if at > 0 and (family, function) in FIRST_FORMS:
                 break
             # Behind a transform the formula is the same; fewer points show that the transform is applied.
-            tail = function in ('survival', 'logCdf', 'logSurvival', 'upperQuantile')
+            tail = function in TAILS
             few = {'count': 45, 'corners': 25} if at > 0 and (family in DIGITS or tail) else {}
             yield record(family, function, names, kernel, formula, natural, partials.split(),
                          points.points(family, function, names, **few))
